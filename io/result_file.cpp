@@ -1,0 +1,1 @@
+#include "io/result_file.hpp"
