@@ -25,6 +25,9 @@ struct FarField {
 /// The true step divides pi/2. `step` in (0, pi/6] [rad].
 FarField whole_sphere(double frequency, double step);
 
+/// True when the directions of `field` are those of a `whole_sphere` grid (to 1e-9 rad).
+bool covers_whole_sphere(const FarField& field);
+
 /// Radiation intensity [W/sr] per direction: (|E_theta|^2 + |E_phi|^2) / (2 eta). (T, Q)
 RealGrid intensity(const FarField& field);
 
