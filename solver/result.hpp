@@ -35,7 +35,9 @@ std::span<const BandFigureEntry> band_figure_table();
 
 /// Band figures of a port response against the real `reference` [ohm]. Extremes between points are refined by a
 /// parabola, band edges by linear interpolation of |S11|; a figure that would lie outside the band is NaN (the best
-/// match is then the best band edge).
+/// match is then the best band edge). Empty or single-point bands are allowed; points that are NaN are passed over.
+/// Throws std::invalid_argument when the frequencies do not ascend, do not match the impedances, or `reference` is not
+/// positive.
 BandFigures band_figures(const PortResponse& port, double reference);
 
 /// One method's answer with its figures.
@@ -55,7 +57,9 @@ struct Result {
     std::vector<MethodResult> methods;
 };
 
-/// Attaches the figures to a solution.
+/// Attaches the figures to a solution. S11 at a pattern frequency between band points is interpolated by a cubic; it is
+/// NaN, and so is the realized gain, outside the band. Throws std::invalid_argument when patterns and powers differ
+/// in number, and as `figures` and `band_figures` do.
 MethodResult with_figures(Solution solution, double reference);
 
 }  // namespace panelwright::solver
