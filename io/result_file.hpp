@@ -1,18 +1,13 @@
-/// Results as HDF5.
+/// Results as HDF5. The layout stands in docs/datasets.md, which comes from the same table as the writer.
 #pragma once
 
 #include <filesystem>
-#include <stdexcept>
 #include <string>
 
+#include "io/file.hpp"
 #include "solver/result.hpp"
 
 namespace panelwright::io {
-
-/// A file that cannot be written or read; the message names the file.
-class FileError : public std::runtime_error {
-    using std::runtime_error::runtime_error;
-};
 
 /// Where and how a result was made.
 struct Provenance {
@@ -26,8 +21,12 @@ struct Provenance {
 /// Version of the HDF5 layout.
 inline constexpr int result_format_version = 1;
 
-/// Writes `result` to `path`, which is created or truncated; the caller renames it into place. Throws FileError.
-void write_result(const std::filesystem::path& path, const solver::Result& result, const Provenance& provenance);
+/// Writes `result` to `path`, which is created or truncated; the caller renames it into place. The same
+/// arguments give the same bytes. Throws FileError where the file cannot be written, and
+/// std::invalid_argument where the parts of the result do not fit together: a method twice, methods with
+/// different bands, patterns of one method on different grids, an array of another length than its axis.
+void write_result(const std::filesystem::path& path, const solver::Result& result,
+                  const Provenance& provenance);
 
 /// A result read back.
 struct StoredResult {
@@ -35,7 +34,9 @@ struct StoredResult {
     Provenance provenance;
 };
 
-/// Reads a file made by `write_result`. Throws FileError naming the dataset that is missing or misshapen.
+/// Reads a file made by `write_result`; every number comes back to the last digit. Throws FileError naming
+/// what is wrong: no HDF5 file, truncated, of another program or a newer layout, a dataset missing or
+/// misshapen.
 StoredResult read_result(const std::filesystem::path& path);
 
 /// docs/datasets.md, whole.
