@@ -1,7 +1,8 @@
 /// The antenna as plain data, in metres: patch, spacer, feed, reflector and posts.
 ///
 /// Frame: right-handed; z is the outward normal, from the reflector to the patch; the origin lies on the
-/// reflector's upper face under the patch centre; x runs along the patch's resonant length, y along its width.
+/// reflector's upper face under the patch centre; x runs along the patch's resonant length, y along its
+/// width.
 #pragma once
 
 #include <limits>
@@ -16,9 +17,9 @@ inline constexpr double perfect_conductivity = std::numeric_limits<double>::infi
 
 /// The flat radiating sheet, centred over the origin at z = spacer height.
 struct Patch {
-    double length = 0.0;     ///< along x, the resonant side [m]
-    double width = 0.0;      ///< along y [m]
-    double thickness = 0.0;  ///< sheet thickness [m]; 0 = infinitely thin
+    double length = 0.0;                         ///< along x, the resonant side [m]
+    double width = 0.0;                          ///< along y [m]
+    double thickness = 0.0;                      ///< sheet thickness [m]; 0 = infinitely thin
     double conductivity = perfect_conductivity;  ///< [S/m]; infinite = perfect metal
 
     bool operator==(const Patch&) const = default;
@@ -58,10 +59,10 @@ using Feed = std::variant<Probe, Tab>;
 
 /// The flat metal plate behind the patch, at z = 0.
 struct Reflector {
-    double length = 0.0;    ///< along x [m]
-    double width = 0.0;     ///< along y [m]
-    double offset_x = 0.0;  ///< reflector centre relative to the patch centre [m]
-    double offset_y = 0.0;  ///< reflector centre relative to the patch centre [m]
+    double length = 0.0;                         ///< along x [m]
+    double width = 0.0;                          ///< along y [m]
+    double offset_x = 0.0;                       ///< reflector centre relative to the patch centre [m]
+    double offset_y = 0.0;                       ///< reflector centre relative to the patch centre [m]
     double conductivity = perfect_conductivity;  ///< [S/m]
 
     bool operator==(const Reflector&) const = default;
@@ -94,9 +95,33 @@ struct PanelProblem {
     std::string message;    ///< what was found and what is allowed, lengths in mm
 };
 
+/// Smallest length that counts as one [m]; a side, width or diameter below it is refused as "not positive".
+inline constexpr double smallest_length = 1e-6;
+
+/// Half the side of the square of metal that a round pin or post needs round its axis, in both sheets, over
+/// its radius. The squares of two tubes must not overlap either, which is a little more than the circles ask
+/// for.
+inline constexpr double tube_rim = 1.25;
+
+/// Largest part of its own side by which the patch may reach past the reflector at one end.
+inline constexpr double largest_overhang = 0.25;
+
+/// Largest notch depth over patch length, and largest width of tab and slits together over patch width.
+inline constexpr double deepest_notch = 0.75;
+inline constexpr double widest_notch = 0.9;
+
 /// Everything that is wrong with the shape of `panel`, field by field; empty when it can be built and meshed.
-/// Finite and positive dimensions, pin and posts inside the patch and clear of each other, notch inside the
-/// patch, tab foot on the reflector, patch within the reflector up to an overhang of a quarter of its side.
+///
+/// Each field alone: finite; sides, height, widths and diameters at least `smallest_length`; thickness,
+/// reach, notch depth and gap not negative; permittivity 1..100; loss tangent 0..1; conductivity positive
+/// (infinite is allowed). Fields together: pin and posts with their rim (`tube_rim`) on the patch and on the
+/// reflector, clear of each other and of the tab with its slits; notch within `deepest_notch` and
+/// `widest_notch`, with a gap where it has a depth; tab foot on the reflector; patch within the reflector up
+/// to `largest_overhang`; sheet thinner than the spacer. A field that is wrong by itself takes part in no
+/// further comparison. Limits forgive the rounding of unit conversion (1e-10 of the side concerned).
 std::vector<PanelProblem> problems(const Panel& panel);
+
+/// Is `panel` its own mirror image under y -> -y, feed and posts included? Compared exactly.
+bool mirror_symmetric(const Panel& panel);
 
 }  // namespace panelwright::mesh
