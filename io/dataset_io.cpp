@@ -84,9 +84,14 @@ template <typename T>
 std::vector<T> DatasetReader::read(const DatasetEntry& entry) {
     const hdf5::Handle dataset = open(entry.path);
     const hdf5::Extents found = hdf5::extents(dataset.id());
-    if (is_scale(entry) && found.size() == 1) {
-        lengths_.insert_or_assign(entry.shape.front(),
-                                  fixed_length(entry.shape.front()).value_or(found.front()));
+    const auto misshapen = [&](std::string_view expected) {
+        return hdf5::Error(fmt::format("{} has the shape ({}) instead of {}",
+                                       with_method(entry.path, method_), fmt::join(found, ", "), expected));
+    };
+    if (is_scale(entry)) {
+        if (found.size() != 1) throw misshapen("one dimension");
+        const Axis axis = entry.shape.front();
+        lengths_.insert_or_assign(axis, fixed_length(axis).value_or(found.front()));
     }
     hdf5::Extents expected;
     for (const Axis axis : entry.shape) {
@@ -95,11 +100,7 @@ std::vector<T> DatasetReader::read(const DatasetEntry& entry) {
         }
         expected.push_back(lengths_.at(axis));
     }
-    if (found != expected) {
-        throw hdf5::Error(fmt::format("{} has the shape ({}) instead of ({})",
-                                      with_method(entry.path, method_), fmt::join(found, ", "),
-                                      fmt::join(expected, ", ")));
-    }
+    if (found != expected) throw misshapen(fmt::format("({})", fmt::join(expected, ", ")));
     return hdf5::read_dataset<T>(dataset.id(), image_.size());
 }
 

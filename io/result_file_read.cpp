@@ -84,8 +84,7 @@ solver::BandFigures no_band_figures() {
 
 void read_port(DatasetReader& reader, const std::vector<double>& band, solver::MethodResult& method) {
     method.band = no_band_figures();
-    if (!reader.has("/METHOD/impedance_ohm")) return;
-    if (band.empty()) throw hdf5::Error("/frequency_hz is missing");
+    if (!reader.has("/METHOD/band")) return;
     method.solution.port.frequency = band;
     method.solution.port.impedance = reader.read<Complex>("/METHOD/impedance_ohm");
     // Follows from the impedance; read for its shape alone.
@@ -177,7 +176,7 @@ mesh::SheetMesh read_mesh(DatasetReader& reader) {
         }
         mesh.part.push_back(static_cast<mesh::Part>(part));
     }
-    if (!reader.has("/METHOD/mesh/port_edges")) return mesh;
+    if (!reader.has("/METHOD/mesh/port_edge") && !reader.has("/METHOD/mesh/port_edges")) return mesh;
     reader.read<std::int32_t>("/METHOD/mesh/port_edge");
     mesh.port_edges = rows<2>(reader.read<std::int32_t>("/METHOD/mesh/port_edges"), mesh.points.size());
     return mesh;
