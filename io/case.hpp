@@ -16,20 +16,20 @@ namespace panelwright::io {
 
 /// One block of variations: `keys` move together through `values`.
 struct Variation {
-    std::vector<std::string> keys;     ///< "reflector.length", …
-    std::vector<std::string> values;   ///< (V) as text with unit, in file order: "160 mm"
+    std::vector<std::string> keys;    ///< "reflector.length", …
+    std::vector<std::string> values;  ///< (V) as text with unit, in file order: "160 mm"
 };
 
 /// A checked case in SI units; made only by `read_case` and `parse_case`.
 struct Case {
     std::string title;
     mesh::Panel panel;
-    solver::Task task;                     ///< band, pattern frequencies, accuracy, reference impedance
+    solver::Task task;  ///< band, pattern frequencies, accuracy, reference impedance
     std::vector<solver::Method> methods;
     std::vector<Variation> variations;
-    std::string file;                      ///< name as given
-    std::string text;                      ///< the file, verbatim
-    std::string resolved;                  ///< all keys with all defaults filled in, as TOML
+    std::string file;      ///< name as given
+    std::string text;      ///< the file, verbatim
+    std::string resolved;  ///< all keys with all defaults filled in, as TOML
 };
 
 /// One problem of a case file.
@@ -60,7 +60,8 @@ Case read_case(const std::filesystem::path& path);
 /// Reads and checks a case from memory; `file` names it in messages. Throws CaseError.
 Case parse_case(std::string_view text, std::string_view file);
 
-/// One row of the key table: it drives parsing, bounds, defaults, suggestions, `panelwright keys` and the docs.
+/// One row of the key table: it drives parsing, bounds, defaults, suggestions, `panelwright keys` and the
+/// docs.
 struct KeyEntry {
     std::string name;           ///< "patch.length"
     std::string type;           ///< "length", "frequency", "number", "text", …
