@@ -90,14 +90,18 @@ Tally unused_points(const SheetMesh& mesh) {
     return tally;
 }
 
-/// Vertices in the order of their projection on a slanting direction: near ones are near in that order, and
-/// few of a regular grid fall together.
+/// Vertices in the order of their projection on a slanting direction, so that near ones are near in that
+/// order and few of a regular grid fall together; with a second projection that tells most of those apart.
 class SortedPoints {
   public:
-    explicit SortedPoints(const SheetMesh& mesh) : mesh_(mesh), order_(mesh.points.size()) {
+    explicit SortedPoints(const SheetMesh& mesh) : views_(mesh.points.size()), order_(mesh.points.size()) {
+        const Vector3d one = Vector3d(1.0, std::sqrt(2.0) - 1.0, std::sqrt(0.37)).normalized();
+        const Vector3d two = Vector3d(1.0 - std::sqrt(3.0), 1.0, std::sqrt(0.83)).normalized();
+        for (std::size_t n = 0; n < views_.size(); ++n)
+            views_[n] = {mesh.points[n].dot(one), mesh.points[n].dot(two)};
         std::iota(order_.begin(), order_.end(), std::size_t{0});
         std::sort(order_.begin(), order_.end(),
-                  [this](std::size_t a, std::size_t b) { return at(a) < at(b); });
+                  [this](std::size_t a, std::size_t b) { return views_[a] < views_[b]; });
         Vector3d low = mesh.points.empty() ? Vector3d::Zero().eval() : mesh.points.front();
         Vector3d high = low;
         for (const Vector3d& point : mesh.points) {
@@ -108,23 +112,23 @@ class SortedPoints {
     }
 
     double tolerance() const { return tolerance_; }
-    const std::vector<std::size_t>& order() const { return order_; }
 
-    double at(std::size_t n) const { return mesh_.points[n].dot(direction()); }
-
-    /// Calls `visit` for every vertex whose projection lies between the limits.
+    /// Calls `visit` for every vertex that both projections show between `a` and `b`, up to the tolerance.
     template <typename Visit>
-    void between(double from, double to, const Visit& visit) const {
-        const auto first = std::lower_bound(order_.begin(), order_.end(), from,
-                                            [this](std::size_t n, double limit) { return at(n) < limit; });
-        for (auto n = first; n != order_.end() && at(*n) <= to; ++n) visit(*n);
+    void between(std::size_t a, std::size_t b, const Visit& visit) const {
+        const auto [from, to] = std::minmax({views_[a][0], views_[b][0]});
+        const auto [low, high] = std::minmax({views_[a][1], views_[b][1]});
+        const auto first =
+            std::lower_bound(order_.begin(), order_.end(), from - tolerance_,
+                             [this](std::size_t n, double limit) { return views_[n][0] < limit; });
+        for (auto n = first; n != order_.end() && views_[*n][0] <= to + tolerance_; ++n) {
+            const double second = views_[*n][1];
+            if (second >= low - tolerance_ && second <= high + tolerance_) visit(*n);
+        }
     }
 
   private:
-    /// A unit vector whose components have no simple ratios.
-    static Vector3d direction() { return Vector3d(1.0, std::sqrt(2.0) - 1.0, std::sqrt(0.37)).normalized(); }
-
-    const SheetMesh& mesh_;
+    std::vector<std::array<double, 2>> views_;
     std::vector<std::size_t> order_;
     double tolerance_ = 0.0;
 };
@@ -133,7 +137,7 @@ Tally coincident_points(const SheetMesh& mesh, const SortedPoints& sorted) {
     Tally tally("vertices that coincide with another");
     for (std::size_t n = 0; n < mesh.points.size(); ++n) {
         bool twin = false;
-        sorted.between(sorted.at(n), sorted.at(n) + sorted.tolerance(), [&](std::size_t other) {
+        sorted.between(n, n, [&](std::size_t other) {
             twin = twin || (other != n && (mesh.points[other] - mesh.points[n]).norm() <= sorted.tolerance());
         });
         if (twin) tally.note("vertex", n);
@@ -154,13 +158,12 @@ Tally hanging_points(const SheetMesh& mesh, const std::vector<MeshEdge>& edge_li
                      const SortedPoints& sorted) {
     Tally tally("edges with a hanging vertex");
     for (const MeshEdge& edge : edge_list) {
-        const auto [a, b] = edge.ends;
-        const auto [from, to] = std::minmax({sorted.at(index(a)), sorted.at(index(b))});
+        const std::size_t a = index(edge.ends[0]);
+        const std::size_t b = index(edge.ends[1]);
         std::optional<std::size_t> hanging;
-        sorted.between(from, to, [&, a = a, b = b](std::size_t n) {
-            if (n == index(a) || n == index(b)) return;
-            if (hangs_on(mesh.points[n], mesh.points[index(a)], mesh.points[index(b)], sorted.tolerance()))
-                hanging = n;
+        sorted.between(a, b, [&](std::size_t n) {
+            if (n == a || n == b) return;
+            if (hangs_on(mesh.points[n], mesh.points[a], mesh.points[b], sorted.tolerance())) hanging = n;
         });
         if (hanging) tally.note("vertex", *hanging);
     }

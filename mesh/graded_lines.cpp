@@ -12,6 +12,25 @@ namespace {
 /// Comparisons of computed cell sizes forgive this much rounding.
 constexpr double rounding = 1e-9;
 
+/// The h at a key line for which the first `cell` of length has a count of one, h growing at ln(growth) up to
+/// the largest cell.
+double size_at_end(double cell, const Grading& grading) {
+    const double slope = std::log(grading.growth);
+    const double growing = cell * slope / (grading.growth - 1.0);
+    if (growing + slope * cell <= grading.largest) return growing;
+    // Within the first cell h becomes flat. With u = h over the largest cell at the line, the count of one
+    // reads u - 1 - ln u = slope (1 - cell / largest), whose left side falls from infinity to 0 as u rises
+    // to 1.
+    const double right = slope * (1.0 - std::min(1.0, cell / grading.largest));
+    double low = 0.0;
+    double high = 1.0;
+    for (int halving = 0; halving < 50; ++halving) {
+        const double u = 0.5 * (low + high);
+        (u - 1.0 - std::log(u) > right ? low : high) = u;
+    }
+    return high * grading.largest;
+}
+
 /// Wanted cell size h(x) between two key lines: rising from the first, flat, falling to the last; and its
 /// integral count(x) of dx/h, with the inverse.
 class CellSize {
@@ -20,8 +39,8 @@ class CellSize {
     CellSize(double length, double first, double last, const Grading& grading)
         : length_(length),
           slope_(std::log(grading.growth)),
-          start_(first * slope_ / (grading.growth - 1.0)),
-          end_(last * slope_ / (grading.growth - 1.0)),
+          start_(size_at_end(first, grading)),
+          end_(size_at_end(last, grading)),
           flat_(grading.largest) {
         rise_ = std::clamp((flat_ - start_) / slope_, 0.0, length);
         fall_ = length - std::clamp((flat_ - end_) / slope_, 0.0, length);
@@ -71,9 +90,10 @@ bool keeps_to(std::span<const double> line, const Limits& limits, const Grading&
 /// The fewest lines from `from` to `to`, both included, that keep to the limits.
 std::vector<double> between(double from, double to, const Limits& limits, const Grading& grading) {
     const CellSize size(to - from, limits.first, limits.last, grading);
-    // A cell of h's own count never breaks a limit; somewhat fewer may do where both ends' slopes meet.
-    const int most = static_cast<int>(std::ceil(size.count())) + 1;
-    for (int cells = std::max(1, static_cast<int>(size.count() / 1.5)); cells < most; ++cells) {
+    // Cells with a count of one or less keep to all limits; one or two fewer may do where the slopes of both
+    // ends meet.
+    const int most = static_cast<int>(std::ceil(size.count() * (1.0 - rounding))) + 1;
+    for (int cells = std::max(1, most - 3); cells < most; ++cells) {
         std::vector<double> line(static_cast<std::size_t>(cells) + 1);
         for (int n = 0; n <= cells; ++n) {
             line[static_cast<std::size_t>(n)] = from + size.position(n * size.count() / cells);
@@ -86,18 +106,20 @@ std::vector<double> between(double from, double to, const Limits& limits, const 
     return {};
 }
 
-/// Cells wanted at the key lines: bounded by edges and by the distance to the next key line, and such that
-/// none is larger than the growth from another one allows.
+/// Cells wanted at the key lines: bounded at free edges, and by what may stand beside a single cell that
+/// fills the distance to the next key line.
 std::vector<double> wanted_cells(std::span<const KeyLine> keys, const Grading& grading) {
     std::vector<double> wanted(keys.size());
     for (std::size_t k = 0; k < keys.size(); ++k) {
         wanted[k] = keys[k].free_edge ? grading.edge : grading.largest;
-        if (k > 0) wanted[k] = std::min(wanted[k], keys[k].at - keys[k - 1].at);
-        if (k + 1 < keys.size()) wanted[k] = std::min(wanted[k], keys[k + 1].at - keys[k].at);
+        if (k > 0) wanted[k] = std::min(wanted[k], grading.growth * (keys[k].at - keys[k - 1].at));
+        if (k + 1 < keys.size())
+            wanted[k] = std::min(wanted[k], grading.growth * (keys[k + 1].at - keys[k].at));
     }
     return wanted;
 }
 
+/// Less wherever that is larger than growth from another key line allows.
 std::vector<double> smoothed(std::vector<double> wanted, std::span<const KeyLine> keys, double growth) {
     for (std::size_t k = 1; k < keys.size(); ++k) {
         wanted[k] = std::min(wanted[k], wanted[k - 1] + (growth - 1.0) * (keys[k].at - keys[k - 1].at));

@@ -202,12 +202,23 @@ void too_fat(Findings& found, const RoundPart& part, std::string_view other_key,
                             mm(part.diameter), other_key, mm(side), mm(side / tube_rim)));
 }
 
+/// Pin or post against the patch's shorter side.
+void check_diameter(Findings& found, const RoundPart& part, const Patch& patch) {
+    if (!found.usable({"patch.length", "patch.width", part.diameter_key})) return;
+    if (2.0 * part.rim() < std::min(patch.length, patch.width)) return;
+    if (patch.length < patch.width) {
+        too_fat(found, part, "patch.length", patch.length);
+    } else {
+        too_fat(found, part, "patch.width", patch.width);
+    }
+}
+
 /// Pin or post on the patch and, where that holds, on the reflector.
 void check_on_sheets(Findings& found, const RoundPart& part, const Direction& d) {
     if (!found.usable({d.patch_key, part.key[d.axis], part.diameter_key})) return;
     const double at = part.at[d.axis];
     const double half = 0.5 * d.patch - part.rim();
-    if (half <= 0.0) return too_fat(found, part, d.patch_key, d.patch);
+    if (half <= 0.0) return;  // said already
     if (std::fabs(at) > half + d.forgiven()) {
         return not_within(found, part, d.axis, d.patch_key, "patch", {-half, half});
     }
@@ -230,8 +241,11 @@ void check_apart(Findings& found, const RoundPart& one, const RoundPart& two) {
     const std::size_t axis = dx >= dy ? 0 : 1;
     found.clash(
         two.key[axis], one.key[axis],
-        fmt::format("{} is {}: {} and {} are {} apart in x and {} in y; one of the two must be at least {}",
-                    two.key[axis], mm(two.at[axis]), two.name, one.name, mm(dx), mm(dy), mm(needed)));
+        fmt::format(
+            "{} is {} and {} is {}: {} and {} are {} apart in x and {} in y; one of the two distances "
+            "must be at least {}",
+            two.key[axis], mm(two.at[axis]), one.key[axis], mm(one.at[axis]), two.name, one.name, mm(dx),
+            mm(dy), mm(needed)));
 }
 
 void check_notch(Findings& found, const Panel& panel, const Tab& tab) {
@@ -270,8 +284,10 @@ void check_tab_foot(Findings& found, const Panel& panel, const Tab& tab) {
         if (foot < x.reflector_from() - x.forgiven() || foot > x.reflector_to() + x.forgiven()) {
             found.clash(
                 "feed.reach", x.reflector_key,
-                fmt::format("feed.reach is {}: the tab's foot at x = {} must lie on the reflector, {} to {}",
-                            mm(tab.reach), mm(foot), mm(x.reflector_from()), mm(x.reflector_to())));
+                fmt::format(
+                    "feed.reach is {}: the tab's foot at x = {} must lie on the reflector ({}), which "
+                    "goes from {} to {}",
+                    mm(tab.reach), mm(foot), x.reflector_key, mm(x.reflector_from()), mm(x.reflector_to())));
         }
     }
     if (found.usable({"feed.width", y.reflector_key, y.offset_key})) {
@@ -279,8 +295,10 @@ void check_tab_foot(Findings& found, const Panel& panel, const Tab& tab) {
         if (-half < y.reflector_from() - y.forgiven() || half > y.reflector_to() + y.forgiven()) {
             found.clash(
                 "feed.width", y.reflector_key,
-                fmt::format("feed.width is {}: the tab's foot must lie on the reflector, y = {} to {}",
-                            mm(tab.width), mm(y.reflector_from()), mm(y.reflector_to())));
+                fmt::format(
+                    "feed.width is {}: the tab's foot must lie on the reflector ({}), which goes from "
+                    "y = {} to {}",
+                    mm(tab.width), y.reflector_key, mm(y.reflector_from()), mm(y.reflector_to())));
         }
     }
 }
@@ -299,10 +317,11 @@ void check_clear_of_notch(Findings& found, const Panel& panel, const Tab& tab, c
     if (clear >= -rounding * panel.patch.length) return;
     found.clash(
         post.key[0], "feed.notch_depth",
-        fmt::format("{} is {}: {} ({} {}) with its rim must be clear of the notch, which takes up x below {} "
-                    "and y from {} to {}",
-                    post.key[0], mm(post.at[0]), post.name, post.diameter_key, mm(post.diameter),
-                    mm(notch_end), mm(-notch_side), mm(notch_side)));
+        fmt::format(
+            "{} is {}: {} ({} {}) with its rim must be clear of the notch (feed.notch_depth {}), which "
+            "takes up x below {} and y from {} to {}",
+            post.key[0], mm(post.at[0]), post.name, post.diameter_key, mm(post.diameter), mm(tab.notch_depth),
+            mm(notch_end), mm(-notch_side), mm(notch_side)));
 }
 
 }  // namespace
@@ -312,6 +331,7 @@ std::vector<PanelProblem> problems(const Panel& panel) {
     const std::vector<RoundPart> parts = round_parts(panel);
     check_fields(found, panel, parts);
     check_thickness(found, panel);
+    for (const RoundPart& part : parts) check_diameter(found, part, panel.patch);
     for (const Direction& d : directions(panel)) {
         check_overhang(found, d);
         for (const RoundPart& part : parts) check_on_sheets(found, part, d);
