@@ -22,7 +22,7 @@ struct MeshEdge {
     std::vector<EdgeSide> sides;  ///< triangles along it, in ascending order; one at a free edge
 };
 
-/// All edges, ascending by their ends. Takes time n log n.
+/// All edges, ascending by their ends. Takes time n log n. Vertex numbers must not be negative.
 std::vector<MeshEdge> edges(const SheetMesh& mesh);
 
 }  // namespace panelwright::mesh

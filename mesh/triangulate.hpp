@@ -11,7 +11,7 @@ struct MeshOptions {
     double cell_size = 0.0;  ///< largest cell side [m]; positive, at least 1e-5 of the panel's longest side
     double edge_cell = 0.0;  ///< side of the cells along a free edge, across it [m]; 0 = a quarter of
                              ///< cell_size, else between a thousandth of cell_size and cell_size
-    double growth = 1.8;  ///< largest ratio of neighbouring cells across a graded line, at least 1.1
+    double growth = 1.8;     ///< largest ratio of neighbouring cells across a graded line, at least 1.1
     int tube_sides = 8;  ///< sides of the polygonal tube that stands for a round pin or post: even, 4 to 360;
                          ///< more are taken where a side would be longer than cell_size
 };
