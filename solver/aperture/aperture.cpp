@@ -49,14 +49,19 @@ std::vector<double> loss_frequencies(const ApertureModel& model, const std::vect
     return chebyshev_points(band.front(), band.back(), count);
 }
 
+/// Rim voltages for the loss of two slots over an unbounded plane.
+RimVoltages starting_voltages(const mesh::Panel& panel, const ApertureModel& model, const Wave& wave) {
+    const DrivenCavity start = driven(panel, model, wave, starting_loss(model, wave));
+    return rim_voltages(model, wave, start);
+}
+
 PortResponse port_response(const mesh::Panel& panel, const ApertureModel& model, const std::vector<double>& band) {
     const std::vector<double> at = loss_frequencies(model, band);
     std::vector<double> losses;
     double least = std::numeric_limits<double>::infinity();
     for (const double frequency : at) {
         const Wave wave(frequency);
-        const DrivenCavity start = driven(panel, model, wave, starting_loss(model, wave));
-        const RimVoltages voltages = rim_voltages(model, wave, start.loss, start.currents);
+        const RimVoltages voltages = starting_voltages(panel, model, wave);
         const Eigen::MatrixXcd powers =
             panel_powers(wave, model.rim, model.plate, voltages.columns, DiffractionOrder::second);
         losses.push_back(settle(panel, model, wave, powers).radiation_loss);
@@ -82,19 +87,19 @@ struct PatternSolution {
 PatternSolution pattern_solution(const mesh::Panel& panel, const ApertureModel& model, double frequency, double step,
                                  const mesh::SheetMesh& mesh) {
     const Wave wave(frequency);
-    const DrivenCavity start = driven(panel, model, wave, starting_loss(model, wave));
-    const RimVoltages voltages = rim_voltages(model, wave, start.loss, start.currents);
-    const Eigen::MatrixXcd powers =
-        panel_powers(wave, model.rim, model.plate, voltages.columns, DiffractionOrder::second);
+    const RimVoltages voltages = starting_voltages(panel, model, wave);
+    const std::vector<FarField> fields =
+        panel_far_fields(wave, model.rim, model.plate, voltages.columns, DiffractionOrder::second, step);
     PatternSolution out;
-    out.state = settle(panel, model, wave, powers);
+    out.state = settle(panel, model, wave, mutual_powers(fields));
     // 1 W accepted: half the resistance times the current squared. The feed line is lossless.
     const double feed_current = std::sqrt(2.0 / out.state.cavity_impedance.real());
-    const RimVoltages settled = rim_voltages(model, wave, out.state.loss, out.state.currents);
+    const Complex fundamental = feed_current * out.state.amplitude;
+    out.field = fields[0];
+    out.field.e_theta = fundamental * fields[0].e_theta + feed_current * fields[1].e_theta;
+    out.field.e_phi = fundamental * fields[0].e_phi + feed_current * fields[1].e_phi;
     const Eigen::VectorXcd rim_voltage =
-        feed_current * (settled.amplitude * settled.columns.col(0) + settled.columns.col(1));
-    out.field =
-        panel_far_fields(wave, model.rim, model.plate, rim_voltage, DiffractionOrder::second, step).front();
+        fundamental * voltages.columns.col(0) + feed_current * voltages.columns.col(1);
     const double loss = out.state.loss;
     out.powers.accepted = 1.0;
     out.powers.radiated = radiated_power(out.field);
@@ -105,8 +110,16 @@ PatternSolution pattern_solution(const mesh::Panel& panel, const ApertureModel& 
     return out;
 }
 
-/// Mesh for drawing the currents: cells of a share of the shortest wavelength, larger where there would be too many.
-mesh::SheetMesh drawing_mesh(const mesh::Panel& panel, const Task& task) {
+void require(const mesh::Panel& panel, const Task& task) {
+    if (const auto wrong = mesh::problems(panel); !wrong.empty())
+        throw std::invalid_argument("the panel cannot be solved: " + wrong.front().key + ": " + wrong.front().message);
+    if (task.band.empty() || !std::is_sorted(task.band.begin(), task.band.end()) || !(task.band.front() > 0.0))
+        throw std::invalid_argument("the band must hold at least one frequency, ascending and positive");
+}
+
+}  // namespace
+
+mesh::MeshOptions aperture_mesh_options(const mesh::Panel& panel, const Task& task) {
     const double shortest = speed_of_light / std::max(task.band.back(), task.pattern_at.empty() ? 0.0 : task.pattern_at.back());
     const double share = task.accuracy == Accuracy::quick ? 10.0 : task.accuracy == Accuracy::normal ? 16.0 : 24.0;
     mesh::MeshOptions options;
@@ -116,11 +129,10 @@ mesh::SheetMesh drawing_mesh(const mesh::Panel& panel, const Task& task) {
         options.cell_size *= 1.4;
         options.edge_cell *= 1.4;
     }
-    return mesh::triangulate(panel, options);
+    return options;
 }
 
-/// Limits of validity that this panel touches.
-std::vector<std::string> remarks(const mesh::Panel& panel, const Task& task) {
+std::vector<std::string> aperture_remarks(const mesh::Panel& panel, const Task& task) {
     const double wavelength = 2.0 * speed_of_light / (task.band.front() + task.band.back());
     std::vector<std::string> out;
     if (panel.spacer.height > 0.06 * wavelength)
@@ -143,22 +155,13 @@ std::vector<std::string> remarks(const mesh::Panel& panel, const Task& task) {
     return out;
 }
 
-void require(const mesh::Panel& panel, const Task& task) {
-    if (const auto wrong = mesh::problems(panel); !wrong.empty())
-        throw std::invalid_argument("the panel cannot be solved: " + wrong.front().key + ": " + wrong.front().message);
-    if (task.band.empty() || !std::is_sorted(task.band.begin(), task.band.end()) || !(task.band.front() > 0.0))
-        throw std::invalid_argument("the band must hold at least one frequency, ascending and positive");
-}
-
-}  // namespace
-
 Solution solve_aperture(const mesh::Panel& panel, const Task& task) {
     require(panel, task);
     const auto begin = std::chrono::steady_clock::now();
     const ApertureModel model = aperture_model(panel);
     Solution solution;
     solution.method = Method::aperture;
-    solution.mesh = drawing_mesh(panel, task);
+    solution.mesh = mesh::triangulate(panel, aperture_mesh_options(panel, task));
     solution.port = port_response(panel, model, task.band);
     HealthEntry balance{"power_balance", "1", "radiated plus lost power over accepted power", {}, true};
     HealthEntry quality{"cavity_quality_factor", "1", "quality factor of the loaded cavity, all losses included", {}, true};
@@ -171,7 +174,7 @@ Solution solve_aperture(const mesh::Panel& panel, const Task& task) {
         solution.powers.push_back(pattern.powers);
         solution.currents.push_back(std::move(pattern.current));
     }
-    solution.remarks = remarks(panel, task);
+    solution.remarks = aperture_remarks(panel, task);
     const double seconds = std::chrono::duration<double>(std::chrono::steady_clock::now() - begin).count();
     solution.health = {balance,
                        quality,

@@ -21,13 +21,11 @@ bool on_tab_strip(const mesh::Panel& panel, const Eigen::Vector3d& place) {
 }
 
 /// Current of the open plate at `place` [A/m]: physical optics shaped by each edge.
-Eigen::Vector3cd plate_current(const ApertureModel& model, const Wave& wave, const Eigen::VectorXcd& rim_voltage,
+Eigen::Vector3cd plate_current(const PlateField& field, const Plate& plate, const Wave& wave,
                                const Eigen::Vector3d& place) {
-    const Plate& plate = model.plate;
-    const auto field =
-        plate_magnetic_field(model.rim, rim_voltage, wave.wavenumber, Eigen::Vector2d(place.x(), place.y()));
-    Complex along_x = -field(1, 0);
-    Complex along_y = field(0, 0);
+    const auto unbroken = field.current(Eigen::Vector2d(place.x(), place.y()));
+    Complex along_x = unbroken(0, 0);
+    Complex along_y = unbroken(1, 0);
     for (const double distance : {place.x() - plate.x_from, plate.x_to - place.x()}) {
         const double kd = wave.wavenumber * std::max(distance, 0.0) + 1e-9;
         along_x *= hard_edge_current(kd);
@@ -98,11 +96,12 @@ SurfaceCurrent aperture_currents(const mesh::Panel& panel, const ApertureModel& 
         const double sense = mesh.part[t] == mesh::Part::patch ? 1.0 : -1.0;
         out[t] = {sense * scale * field[i].gradient.x(), sense * scale * field[i].gradient.y(), 0.0};
     }
+    const PlateField rim_field(model.rim, rim_voltage, wave.wavenumber);
     const auto open = static_cast<std::ptrdiff_t>(open_triangle.size());
 #pragma omp parallel for schedule(static)
     for (std::ptrdiff_t i = 0; i < open; ++i) {
         const std::size_t t = open_triangle[static_cast<std::size_t>(i)];
-        out[t] = plate_current(model, wave, rim_voltage, centroid(mesh, t));
+        out[t] = plate_current(rim_field, model.plate, wave, centroid(mesh, t));
     }
     return out;
 }

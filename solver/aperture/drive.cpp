@@ -22,6 +22,13 @@ Complex fundamental_amplitude(const ApertureModel& model, const Wave& wave, doub
            overlap / detuning;
 }
 
+/// Strength of the rim's line currents per cavity voltage: raised by what their level over the plate costs them in radiated
+/// power, cos^2(k z cos theta) at the mean cos^2 theta of a broad beam (3/5, that of an intensity cos^2 theta), so that
+/// the cavity is damped as by a rim at the plate.
+double rim_strength(const Rim& rim, const Wave& wave) {
+    return 1.0 / std::cos(std::min(std::sqrt(0.6) * wave.wavenumber * rim.height, 1.0));
+}
+
 /// Effective loss tangent for a given radiation part.
 double whole_loss(double radiation, const CavityLoss& parts) {
     return radiation * (1.0 + parts.surface_wave_share) + parts.conductor + parts.dielectric;
@@ -34,18 +41,17 @@ double power(const Eigen::MatrixXcd& powers, Complex a) {
 
 }  // namespace
 
-RimVoltages rim_voltages(const ApertureModel& model, const Wave& wave, double loss, const Eigen::VectorXcd& currents) {
+RimVoltages rim_voltages(const ApertureModel& model, const Wave& wave, const DrivenCavity& state) {
     const Cavity& cavity = model.cavity;
-    const double stretch = cavity.width / model.rim.width;  // the rim stands for the cavity's wider walls
-    std::vector<Eigen::Vector2d> places;
-    for (const Eigen::Vector2d& point : model.rim.points) places.emplace_back(point.x(), point.y() * stretch);
-    const auto field = cavity_field(cavity, wave, loss, model.pillars, currents, places);
-    RimVoltages voltages{Eigen::MatrixXcd(static_cast<Eigen::Index>(places.size()), 2),
-                         fundamental_amplitude(model, wave, loss, currents)};
+    const std::vector<Eigen::Vector2d>& places = model.rim.points;
+    const auto field = cavity_field(cavity, wave, state.loss, model.pillars, state.currents, places);
+    RimVoltages voltages{Eigen::MatrixXcd(static_cast<Eigen::Index>(places.size()), 2)};
+    const double strength = rim_strength(model.rim, wave);
     for (std::size_t i = 0; i < places.size(); ++i) {
         const auto row = static_cast<Eigen::Index>(i);
-        voltages.columns(row, 0) = std::sin(pi / cavity.length * places[i].x());
-        voltages.columns(row, 1) = field[i].voltage - voltages.amplitude * voltages.columns(row, 0);
+        const double mode = std::sin(pi / cavity.length * places[i].x());
+        voltages.columns(row, 0) = strength * mode;
+        voltages.columns(row, 1) = strength * (field[i].voltage - state.amplitude * mode);
     }
     return voltages;
 }
@@ -66,6 +72,7 @@ DrivenCavity driven(const mesh::Panel& panel, const ApertureModel& model, const 
     out.loss = whole_loss(radiation_loss, out.parts);
     out.currents = pillar_currents(model.cavity, wave, out.loss, model.pillars);
     out.cavity_impedance = driving_impedance(model.cavity, wave, out.loss, model.pillars);
+    out.amplitude = fundamental_amplitude(model, wave, out.loss, out.currents);
     return out;
 }
 
@@ -73,8 +80,7 @@ DrivenCavity settle(const mesh::Panel& panel, const ApertureModel& model, const 
                     const Eigen::MatrixXcd& powers) {
     DrivenCavity state = driven(panel, model, wave, starting_loss(model, wave));
     for (int step = 0; step < 12; ++step) {
-        const Complex amplitude = fundamental_amplitude(model, wave, state.loss, state.currents);
-        const double wanted = power(powers, amplitude);
+        const double wanted = power(powers, state.amplitude);
         const double lost = 0.5 * state.cavity_impedance.real();
         // Power lost as radiation is its share of the whole; the loss tangent that makes it `wanted` follows at once.
         const double next = std::clamp(state.loss * wanted / lost, 1e-6, 0.5);

@@ -16,15 +16,15 @@ struct DrivenCavity {
     CavityLoss parts;
     Complex cavity_impedance;     ///< where the feed's current enters the cavity [ohm]
     Eigen::VectorXcd currents;    ///< through the pillars [A]
+    Complex amplitude;            ///< of the fundamental mode, its voltage at the cavity's end x = +length/2 [V]
 };
 
-/// Rim voltages [V] for 1 A at the feed with the loss tangent `loss`: column 0 the fundamental mode for unit amplitude,
-/// column 1 everything else; `amplitude` of the fundamental mode.
+/// Rim voltages [V] for 1 A at the feed: column 0 the fundamental mode for unit amplitude,
+/// column 1 everything else.
 struct RimVoltages {
     Eigen::MatrixXcd columns;  ///< (n, 2)
-    Complex amplitude;
 };
-RimVoltages rim_voltages(const ApertureModel& model, const Wave& wave, double loss, const Eigen::VectorXcd& currents);
+RimVoltages rim_voltages(const ApertureModel& model, const Wave& wave, const DrivenCavity& state);
 
 /// Finds the radiation loss that makes the power lost in the cavity on behalf of radiation equal to the power that the rim
 /// radiates over the finite plate. `powers`: the (2, 2) matrix of radiated powers for the columns of

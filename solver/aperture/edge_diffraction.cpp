@@ -37,15 +37,6 @@ Complex smooth_k(double a) {
     return scale * scaled_fresnel_tail(a);
 }
 
-/// Current on the unbroken plate [A/m], rows x and y, a column a source.
-Eigen::Matrix<Complex, 2, Eigen::Dynamic> plate_current(const Rim& rim, const Eigen::MatrixXcd& voltage,
-                                                        double wavenumber, const Eigen::Vector2d& place) {
-    Eigen::Matrix<Complex, 2, Eigen::Dynamic> current = plate_magnetic_field(rim, voltage, wavenumber, place);
-    current.row(0).swap(current.row(1));
-    current.row(0) *= -1.0;
-    return current;
-}
-
 /// How far a ray runs over the plate from `place` along `ray` until it meets an edge [m].
 double reach(const std::array<Edge, 4>& edges, const Eigen::Vector2d& place, const Eigen::Vector2d& ray) {
     double shortest = std::numeric_limits<double>::infinity();
@@ -88,13 +79,13 @@ struct Gathered {
 
 /// The wave that meets `piece` of edge `at` after diffraction at `first`, if a ray leads there.
 void add_second_order(Gathered& out, const std::array<Edge, 4>& edges, std::size_t first, std::size_t at,
-                      const EdgePiece& piece, const Rim& rim, const Eigen::MatrixXcd& voltage, double k) {
+                      const EdgePiece& piece, const PlateField& field, double k) {
     const auto ray = double_ray(edges[first], piece.place);
     if (!ray || !(ray->direction.dot(edges[at].outward) > 1e-6)) return;
     const Eigen::Vector2d incident = ray->bend.normalized();
     const double sine = incident.dot(edges[first].outward);
     const Eigen::RowVectorXcd current =
-        edges[first].outward.cast<Complex>().transpose() * plate_current(rim, voltage, k, ray->bend) / sine;
+        edges[first].outward.cast<Complex>().transpose() * field.current(ray->bend) / sine;
     Complex factor = 2.0 * smooth_k(std::sqrt(2.0 * k * ray->after) * ray->sine) *
                      std::polar(std::sqrt(ray->before / (ray->before + ray->after)), -k * ray->after);
     const bool opposite = edges[first].outward.dot(edges[at].outward) < -0.5;
@@ -112,17 +103,16 @@ void add_second_order(Gathered& out, const std::array<Edge, 4>& edges, std::size
     bent.run = ray->after;
     out.pieces.push_back(bent);
     out.hard.emplace_back(factor * current);
-    out.slope.emplace_back(Eigen::RowVectorXcd::Zero(voltage.cols()));
+    out.slope.emplace_back(Eigen::RowVectorXcd::Zero(current.size()));
 }
 
 }  // namespace
 
-EdgeWaves edge_waves(const Plate& plate, const Rim& rim, const Eigen::MatrixXcd& voltage, double wavenumber,
-                     DiffractionOrder order) {
+EdgeWaves edge_waves(const Plate& plate, const PlateField& field, double wavenumber, DiffractionOrder order) {
     if (!(plate.x_from < 0.0 && plate.x_to > 0.0 && plate.y_from < 0.0 && plate.y_to > 0.0))
         throw std::invalid_argument("the patch centre must lie inside the plate");
     const auto edges = edges_of(plate);
-    const double longest = 2.0 * pi / wavenumber / 3.0;
+    const double longest = 0.5 * 2.0 * pi / wavenumber;
     Gathered out;
     for (std::size_t e = 0; e < edges.size(); ++e) {
         const Edge& edge = edges[e];
@@ -138,20 +128,21 @@ EdgeWaves edge_waves(const Plate& plate, const Rim& rim, const Eigen::MatrixXcd&
             piece.sine = ray.dot(edge.outward);
             piece.cosine = ray.dot(edge.along);
             piece.span = reach(edges, piece.place, piece.cosine * piece.along - piece.sine * piece.outward);
-            const auto current = plate_current(rim, voltage, wavenumber, piece.place);
+            const auto current = field.current(piece.place);
             const Eigen::RowVectorXcd hard = edge.outward.cast<Complex>().transpose() * current / piece.sine;
             out.pieces.push_back(piece);
             out.hard.push_back(hard);
             out.slope.emplace_back(edge.along.cast<Complex>().transpose() * current - piece.cosine * hard);
             if (order == DiffractionOrder::first) continue;
             for (std::size_t first = 0; first < edges.size(); ++first)
-                if (first != e) add_second_order(out, edges, first, e, piece, rim, voltage, wavenumber);
+                if (first != e) add_second_order(out, edges, first, e, piece, field, wavenumber);
         }
     }
     EdgeWaves waves{std::move(out.pieces), {}, {}};
     const auto count = static_cast<Eigen::Index>(waves.pieces.size());
-    waves.hard.resize(count, voltage.cols());
-    waves.slope.resize(count, voltage.cols());
+    const Eigen::Index sources = out.hard.front().size();
+    waves.hard.resize(count, sources);
+    waves.slope.resize(count, sources);
     for (Eigen::Index i = 0; i < count; ++i) {
         waves.hard.row(i) = out.hard[static_cast<std::size_t>(i)];
         waves.slope.row(i) = out.slope[static_cast<std::size_t>(i)];

@@ -52,10 +52,9 @@ struct EdgeWaves {
 /// How many times a wave may meet an edge.
 enum class DiffractionOrder { first, second };
 
-/// Pieces of the four edges of `plate` lit by `rim`; rays start under the patch centre (the origin), which must lie
-/// inside the plate. `voltage` (n, s) as in `plate_magnetic_field`.
-EdgeWaves edge_waves(const Plate& plate, const Rim& rim, const Eigen::MatrixXcd& voltage, double wavenumber,
-                     DiffractionOrder order);
+/// Pieces of the four edges of `plate` lit by the field of a rim; rays start under the patch centre (the origin), which
+/// must lie inside the plate (else std::invalid_argument).
+EdgeWaves edge_waves(const Plate& plate, const PlateField& field, double wavenumber, DiffractionOrder order);
 
 /// Radiation of one piece in a direction: factors of the currents along outward normal and tangent [m^2].
 struct EdgeFactors {

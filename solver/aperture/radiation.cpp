@@ -11,7 +11,7 @@
 namespace panelwright::solver {
 namespace {
 
-/// Nodes along one axis of the plate: panels of at most a third of a wavelength, and short ones under the rim, where the
+/// Nodes along one axis of the plate: panels of at most 0.4 wavelength, and short ones under the rim, where the
 /// field rises within the rim's height.
 GaussRule plate_rule(double from, double to, double wall, double height, double wavelength) {
     std::vector<double> breaks{from, 0.0, to};
@@ -24,7 +24,7 @@ GaussRule plate_rule(double from, double to, double wall, double height, double 
     std::vector<double> kept{breaks.front()};
     for (std::size_t i = 1; i < breaks.size(); ++i)
         if (breaks[i] - kept.back() > 0.2 * height || i + 1 == breaks.size()) kept.push_back(breaks[i]);
-    return composite_rule(kept, wavelength / 3.0, 4);
+    return composite_rule(kept, wavelength / 2.5, 4);
 }
 
 /// Physical-optics current of the plate times quadrature weight, on a tensor grid.
@@ -35,12 +35,12 @@ struct PlateCurrent {
     std::vector<Eigen::MatrixXcd> along_y;
 };
 
-PlateCurrent plate_current_grid(const Wave& wave, const Rim& rim, const Plate& plate, const Eigen::MatrixXcd& voltage) {
+PlateCurrent plate_current_grid(const Wave& wave, const Rim& rim, const Plate& plate, const PlateField& field,
+                                std::size_t sources) {
     const GaussRule x = plate_rule(plate.x_from, plate.x_to, 0.5 * rim.length, rim.height, wave.wavelength);
     const GaussRule y = plate_rule(plate.y_from, plate.y_to, 0.5 * rim.width, rim.height, wave.wavelength);
     const auto rows = static_cast<Eigen::Index>(x.nodes.size());
     const auto columns = static_cast<Eigen::Index>(y.nodes.size());
-    const auto sources = static_cast<std::size_t>(voltage.cols());
     PlateCurrent current{x.nodes, y.nodes, std::vector<Eigen::MatrixXcd>(sources, Eigen::MatrixXcd(rows, columns)),
                          std::vector<Eigen::MatrixXcd>(sources, Eigen::MatrixXcd(rows, columns))};
 #pragma omp parallel for schedule(static)
@@ -48,12 +48,12 @@ PlateCurrent plate_current_grid(const Wave& wave, const Rim& rim, const Plate& p
         for (Eigen::Index i = 0; i < rows; ++i) {
             const auto xi = static_cast<std::size_t>(i);
             const auto yj = static_cast<std::size_t>(j);
-            const auto field = plate_magnetic_field(rim, voltage, wave.wavenumber, {x.nodes[xi], y.nodes[yj]});
+            const auto density = field.current({x.nodes[xi], y.nodes[yj]});
             const double weight = x.weights[xi] * y.weights[yj];
             for (std::size_t s = 0; s < sources; ++s) {
                 const auto column = static_cast<Eigen::Index>(s);
-                current.along_x[s](i, j) = -weight * field(1, column);
-                current.along_y[s](i, j) = weight * field(0, column);
+                current.along_x[s](i, j) = weight * density(0, column);
+                current.along_y[s](i, j) = weight * density(1, column);
             }
         }
     return current;
@@ -97,9 +97,10 @@ void set_row(FarField& field, Eigen::Index row, double k, const RadiationVectors
 std::vector<FarField> direct_fields(const Wave& wave, const Rim& rim, const Plate& plate,
                                     const Eigen::MatrixXcd& voltage, DiffractionOrder order, const FarField& grid) {
     const double k = wave.wavenumber;
-    const PlateCurrent current = plate_current_grid(wave, rim, plate, voltage);
-    const EdgeWaves waves = edge_waves(plate, rim, voltage, k, order);
     const auto sources = static_cast<std::size_t>(voltage.cols());
+    const PlateField field(rim, voltage, k);
+    const PlateCurrent current = plate_current_grid(wave, rim, plate, field, sources);
+    const EdgeWaves waves = edge_waves(plate, field, k, order);
     std::vector<FarField> fields(sources, grid);
     std::vector<double> rim_x;
     std::vector<double> rim_y;
@@ -219,18 +220,14 @@ std::vector<FarField> panel_far_fields(const Wave& wave, const Rim& rim, const P
     return fields;
 }
 
-Eigen::MatrixXcd panel_powers(const Wave& wave, const Rim& rim, const Plate& plate, const Eigen::MatrixXcd& voltage,
-                              DiffractionOrder order) {
-    // Products of two fields hold twice the harmonics of one.
-    const double fine = 0.25 * pi / quarter_intervals(wave, plate);
-    const std::vector<FarField> fields = panel_far_fields(wave, rim, plate, voltage, order, fine);
+Eigen::MatrixXcd mutual_powers(const std::vector<FarField>& fields) {
     const auto power_of = [&](std::size_t a, Complex factor, std::size_t b) {
         FarField sum = fields[a];
         sum.e_theta += factor * fields[b].e_theta;
         sum.e_phi += factor * fields[b].e_phi;
         return radiated_power(sum);
     };
-    const auto count = voltage.cols();
+    const auto count = static_cast<Eigen::Index>(fields.size());
     Eigen::MatrixXcd powers(count, count);
     for (Eigen::Index a = 0; a < count; ++a)
         powers(a, a) = radiated_power(fields[static_cast<std::size_t>(a)]);
@@ -244,6 +241,13 @@ Eigen::MatrixXcd panel_powers(const Wave& wave, const Rim& rim, const Plate& pla
             powers(b, a) = std::conj(powers(a, b));
         }
     return powers;
+}
+
+Eigen::MatrixXcd panel_powers(const Wave& wave, const Rim& rim, const Plate& plate, const Eigen::MatrixXcd& voltage,
+                              DiffractionOrder order) {
+    // Products of two fields hold twice the harmonics of one.
+    const double fine = 0.25 * pi / quarter_intervals(wave, plate);
+    return mutual_powers(panel_far_fields(wave, rim, plate, voltage, order, fine));
 }
 
 }  // namespace panelwright::solver

@@ -19,8 +19,11 @@ namespace panelwright::solver {
 std::vector<FarField> panel_far_fields(const Wave& wave, const Rim& rim, const Plate& plate,
                                        const Eigen::MatrixXcd& voltage, DiffractionOrder order, double step);
 
-/// Radiated powers of fields driven together: half the integral over the sphere of E_a conj(E_b) / eta for each pair of
-/// columns of `voltage`, an (s, s) Hermitian matrix [W].
+/// Radiated powers of fields driven together: half the integral over the sphere of E_a conj(E_b) / eta for each pair, an
+/// (s, s) Hermitian matrix [W].
+Eigen::MatrixXcd mutual_powers(const std::vector<FarField>& fields);
+
+/// `mutual_powers` of the far fields of the columns of `voltage`, on a sphere just fine enough for them.
 Eigen::MatrixXcd panel_powers(const Wave& wave, const Rim& rim, const Plate& plate, const Eigen::MatrixXcd& voltage,
                               DiffractionOrder order);
 

@@ -33,27 +33,68 @@ Rim rectangle_rim(double length, double width, double height, double spacing) {
     return rim;
 }
 
-Eigen::Matrix<Complex, 2, Eigen::Dynamic> plate_magnetic_field(const Rim& rim, const Eigen::MatrixXcd& voltage,
-                                                               double wavenumber, const Eigen::Vector2d& place) {
-    Eigen::Matrix<Complex, 2, Eigen::Dynamic> field =
-        Eigen::Matrix<Complex, 2, Eigen::Dynamic>::Zero(2, voltage.cols());
-    const double z = rim.height;
-    for (std::size_t i = 0; i < rim.points.size(); ++i) {
-        const Eigen::Vector2d apart = place - rim.points[i];
-        const double distance = std::sqrt(apart.squaredNorm() + z * z);
-        const double kr = wavenumber * distance;
-        const double inverse = 1.0 / kr;
-        const Complex transverse(1.0 - inverse * inverse, -inverse);
-        const Complex radial(-1.0 + 3.0 * inverse * inverse, 3.0 * inverse);
-        // Minus j k / eta times the free-space Green's function, doubled by the image, times M = -voltage * element.
-        const Complex wave = Complex(std::cos(kr), -std::sin(kr)) / (4.0 * pi * distance);
-        const Complex scale = Complex(0.0, 2.0 * wavenumber / vacuum_impedance) * wave;
-        const double along = rim.elements[i].dot(apart) / (distance * distance);
-        const Eigen::Vector2cd element =
-            scale * (transverse * rim.elements[i].cast<Complex>() + (radial * along) * apart.cast<Complex>());
-        field.noalias() += element * voltage.row(static_cast<Eigen::Index>(i));
+PlateField::PlateField(const Rim& rim, const Eigen::MatrixXcd& voltage, double wavenumber)
+    : wavenumber_(wavenumber),
+      height_(rim.height),
+      x_(static_cast<Eigen::Index>(rim.points.size())),
+      y_(x_.size()),
+      element_x_(x_.size()),
+      element_y_(x_.size()),
+      voltage_re_(voltage.real()),
+      voltage_im_(voltage.imag()) {
+    if (voltage.rows() != x_.size()) throw std::invalid_argument("one voltage is needed for each point of the rim");
+    for (Eigen::Index i = 0; i < x_.size(); ++i) {
+        const auto point = static_cast<std::size_t>(i);
+        x_(i) = rim.points[point].x();
+        y_(i) = rim.points[point].y();
+        element_x_(i) = rim.elements[point].x();
+        element_y_(i) = rim.elements[point].y();
+    }
+}
+
+Eigen::Matrix<Complex, 2, Eigen::Dynamic> PlateField::at(const Eigen::Vector2d& place) const {
+    const Eigen::ArrayXd dx = place.x() - x_;
+    const Eigen::ArrayXd dy = place.y() - y_;
+    const Eigen::ArrayXd distance = (dx.square() + dy.square() + height_ * height_).sqrt();
+    const Eigen::ArrayXd kr = wavenumber_ * distance;
+    // Sine and cosine in loops of their own: together they would become one scalar call.
+    Eigen::ArrayXd cosine(kr.size());
+    Eigen::ArrayXd sine(kr.size());
+    for (Eigen::Index i = 0; i < kr.size(); ++i) cosine(i) = std::cos(kr(i));
+    for (Eigen::Index i = 0; i < kr.size(); ++i) sine(i) = std::sin(kr(i));
+    // H = 2 (-j k / eta) G [(1 - j/kr - 1/kr^2) M + (-1 + 3j/kr + 3/kr^2) (M.r) r], M = -voltage * element.
+    const Eigen::ArrayXd inverse = kr.inverse();
+    const Eigen::ArrayXd inverse2 = inverse.square();
+    const Eigen::ArrayXd scale = (2.0 * wavenumber_ / vacuum_impedance / (4.0 * pi)) * distance.inverse();
+    // j exp(-j kr) = sin kr + j cos kr.
+    const Eigen::ArrayXd wave_re = scale * sine;
+    const Eigen::ArrayXd wave_im = scale * cosine;
+    const Eigen::ArrayXd along = (element_x_ * dx + element_y_ * dy) / distance.square();
+    const Eigen::ArrayXd flat = 1.0 - inverse2;
+    const Eigen::ArrayXd across_re = wave_re * flat + wave_im * inverse;
+    const Eigen::ArrayXd across_im = wave_im * flat - wave_re * inverse;
+    const Eigen::ArrayXd steep = 3.0 * inverse2 - 1.0;
+    const Eigen::ArrayXd radial_re = (wave_re * steep - 3.0 * wave_im * inverse) * along;
+    const Eigen::ArrayXd radial_im = (wave_im * steep + 3.0 * wave_re * inverse) * along;
+    const Eigen::ArrayXd x_re = across_re * element_x_ + radial_re * dx;
+    const Eigen::ArrayXd x_im = across_im * element_x_ + radial_im * dx;
+    const Eigen::ArrayXd y_re = across_re * element_y_ + radial_re * dy;
+    const Eigen::ArrayXd y_im = across_im * element_y_ + radial_im * dy;
+    Eigen::Matrix<Complex, 2, Eigen::Dynamic> field(2, voltage_re_.cols());
+    for (Eigen::Index s = 0; s < voltage_re_.cols(); ++s) {
+        const auto re = voltage_re_.col(s);
+        const auto im = voltage_im_.col(s);
+        field(0, s) = Complex((x_re * re - x_im * im).sum(), (x_re * im + x_im * re).sum());
+        field(1, s) = Complex((y_re * re - y_im * im).sum(), (y_re * im + y_im * re).sum());
     }
     return field;
+}
+
+Eigen::Matrix<Complex, 2, Eigen::Dynamic> PlateField::current(const Eigen::Vector2d& place) const {
+    Eigen::Matrix<Complex, 2, Eigen::Dynamic> current = at(place);
+    current.row(0).swap(current.row(1));
+    current.row(0) *= -1.0;
+    return current;
 }
 
 }  // namespace panelwright::solver

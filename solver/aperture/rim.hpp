@@ -30,10 +30,26 @@ struct Plate {
     double y_to = 0.0;
 };
 
-/// Tangential magnetic field (x, y) [A/m] at the place (x, y, 0) on an unbroken plate, per source: twice that of the rim
-/// alone, its image being of equal sense. `voltage` (n, s): rim voltage at each rim point for each of s sources [V].
-/// Exact near field of magnetic current elements (C. A. Balanis, Advanced Engineering Electromagnetics, sec. 6.7).
-Eigen::Matrix<Complex, 2, Eigen::Dynamic> plate_magnetic_field(const Rim& rim, const Eigen::MatrixXcd& voltage,
-                                                               double wavenumber, const Eigen::Vector2d& place);
+/// Tangential magnetic field on an unbroken plate below `rim`: twice that of the rim alone, its image being of equal sense.
+/// Exact near field of magnetic current elements (C. A. Balanis, Advanced Engineering Electromagnetics, sec. 6.7). Holds
+/// the rim in the order that the vector loops like; made once for many places.
+class PlateField {
+  public:
+    /// `voltage` (n, s): rim voltage at each rim point for each of s sources [V].
+    PlateField(const Rim& rim, const Eigen::MatrixXcd& voltage, double wavenumber);
+
+    /// Magnetic field (x, y; a column a source) at (x, y, 0) [A/m].
+    Eigen::Matrix<Complex, 2, Eigen::Dynamic> at(const Eigen::Vector2d& place) const;
+
+    /// Surface current that goes with it, z x H (x, y; a column a source) [A/m].
+    Eigen::Matrix<Complex, 2, Eigen::Dynamic> current(const Eigen::Vector2d& place) const;
+
+  private:
+    double wavenumber_;
+    double height_;
+    Eigen::ArrayXd x_, y_;                      ///< (n) rim points [m]
+    Eigen::ArrayXd element_x_, element_y_;      ///< (n) rim elements [m]
+    Eigen::ArrayXXd voltage_re_, voltage_im_;   ///< (n, s) [V]
+};
 
 }  // namespace panelwright::solver
