@@ -3,7 +3,9 @@
 #include <algorithm>
 #include <array>
 #include <cmath>
+#include <map>
 #include <stdexcept>
+#include <utility>
 
 #include "solver/aperture/gauss.hpp"
 #include "solver/constants.hpp"
@@ -80,7 +82,7 @@ struct RadiationVectors {
 void set_row(FarField& field, Eigen::Index row, double k, const RadiationVectors& v) {
     const double cosine = std::cos(field.theta[static_cast<std::size_t>(row)]);
     const Complex scale(0.0, -k / (4.0 * pi));
-    for (Eigen::Index q = 0; q < field.e_theta.cols(); ++q) {
+    for (Eigen::Index q = 0; q < v.electric_x.size(); ++q) {
         const double phi = field.phi[static_cast<std::size_t>(q)];
         const double c = std::cos(phi);
         const double s = std::sin(phi);
@@ -90,6 +92,33 @@ void set_row(FarField& field, Eigen::Index row, double k, const RadiationVectors
         const Complex l_phi = -s * v.magnetic_x(q) + c * v.magnetic_y(q);
         field.e_theta(row, q) = scale * (vacuum_impedance * n_theta + l_phi);
         field.e_phi(row, q) = scale * (vacuum_impedance * n_phi - l_theta);
+    }
+}
+
+/// Whether plate and voltages are their own mirror images in the plane y = 0.
+bool mirror_symmetric(const Rim& rim, const Plate& plate, const Eigen::MatrixXcd& voltage) {
+    if (plate.y_from != -plate.y_to) return false;
+    // The rim's sides run round it: the one from +y to -y at either end is mirrored in itself, the other two in each other.
+    const double largest = voltage.cwiseAbs().maxCoeff();
+    std::map<std::pair<double, double>, Eigen::Index> places;
+    const auto key = [](double x, double y) { return std::pair(std::round(x * 1e9), std::round(y * 1e9)); };
+    for (std::size_t i = 0; i < rim.points.size(); ++i)
+        places[key(rim.points[i].x(), rim.points[i].y())] = static_cast<Eigen::Index>(i);
+    for (std::size_t i = 0; i < rim.points.size(); ++i) {
+        const auto twin = places.find(key(rim.points[i].x(), -rim.points[i].y()));
+        if (twin == places.end()) return false;
+        const auto row = static_cast<Eigen::Index>(i);
+        if ((voltage.row(row) - voltage.row(twin->second)).cwiseAbs().maxCoeff() > 1e-10 * largest) return false;
+    }
+    return true;
+}
+
+/// Fills the half of a mirror-symmetric field with phi > pi: E_theta is even, E_phi odd in phi.
+void mirror(FarField& field) {
+    const Eigen::Index columns = field.e_theta.cols();
+    for (Eigen::Index q = columns / 2 + 1; q < columns; ++q) {
+        field.e_theta.col(q) = field.e_theta.col(columns - q);
+        field.e_phi.col(q) = -field.e_phi.col(columns - q);
     }
 }
 
@@ -109,7 +138,8 @@ std::vector<FarField> direct_fields(const Wave& wave, const Rim& rim, const Plat
         rim_y.push_back(point.y());
     }
     const auto rows = static_cast<Eigen::Index>(grid.theta.size());
-    const auto columns = static_cast<Eigen::Index>(grid.phi.size());
+    const bool symmetric = mirror_symmetric(rim, plate, voltage);
+    const auto columns = static_cast<Eigen::Index>(symmetric ? grid.phi.size() / 2 + 1 : grid.phi.size());
 #pragma omp parallel for schedule(dynamic)
     for (Eigen::Index t = 0; t < rows; ++t) {
         const double theta = grid.theta[static_cast<std::size_t>(t)];
@@ -157,14 +187,20 @@ std::vector<FarField> direct_fields(const Wave& wave, const Rim& rim, const Plat
         }
         for (std::size_t s = 0; s < sources; ++s) set_row(fields[s], t, k, vectors[s]);
     }
+    if (symmetric)
+        for (FarField& one : fields) mirror(one);
     return fields;
 }
 
-/// Intervals of a quarter circle that resolve every harmonic of sources within `radius`: the harmonics end at k times
-/// the radius plus about ten more for four digits (J. E. Hansen, Spherical Near-field Antenna Measurements, 1988, sec. 2.2).
-int quarter_intervals(const Wave& wave, const Plate& plate) {
+/// Harmonics kept beyond k times the radius of the sources, where they end: ten more for four digits of the field
+/// (J. E. Hansen, Spherical Near-field Antenna Measurements, 1988, sec. 2.2), six for three digits of the power.
+constexpr double field_margin = 10.0;
+constexpr double power_margin = 6.0;
+
+/// Intervals of a quarter circle that resolve the harmonics of a plate's field.
+int quarter_intervals(const Wave& wave, const Plate& plate, double margin) {
     const double radius = std::hypot(std::max(-plate.x_from, plate.x_to), std::max(-plate.y_from, plate.y_to));
-    return static_cast<int>(std::ceil(0.5 * (wave.wavenumber * radius + 10.0)));
+    return static_cast<int>(std::ceil(0.5 * (wave.wavenumber * radius + margin)));
 }
 
 /// Values of the interpolating trigonometric polynomial through `count` (even) equal steps round the circle, at `angles`:
@@ -197,11 +233,8 @@ ComplexGrid interpolate_component(const ComplexGrid& values, const Eigen::Matrix
     return (round_theta.cast<Complex>() * circles).array();
 }
 
-}  // namespace
-
-FarField interpolate_sphere(const FarField& field, double step) {
-    if (!covers_whole_sphere(field))
-        throw std::invalid_argument("interpolation needs a far field over the whole sphere at equal steps");
+/// One field interpolated; see `interpolate_sphere`.
+FarField interpolated(const FarField& field, double step) {
     FarField out = whole_sphere(field.frequency, step);
     const Eigen::MatrixXd round_phi = circle_interpolation(field.phi.size(), out.phi);
     const Eigen::MatrixXd round_theta = circle_interpolation(field.phi.size(), out.theta);
@@ -210,14 +243,29 @@ FarField interpolate_sphere(const FarField& field, double step) {
     return out;
 }
 
-std::vector<FarField> panel_far_fields(const Wave& wave, const Rim& rim, const Plate& plate,
-                                       const Eigen::MatrixXcd& voltage, DiffractionOrder order, double step) {
-    const double coarse = 0.5 * pi / quarter_intervals(wave, plate);
+/// Fields evaluated at steps of `coarse` and interpolated to `step`; evaluated there at once where `step` is no finer.
+std::vector<FarField> interpolated_fields(const Wave& wave, const Rim& rim, const Plate& plate,
+                                          const Eigen::MatrixXcd& voltage, DiffractionOrder order, double coarse,
+                                          double step) {
     if (coarse <= step) return direct_fields(wave, rim, plate, voltage, order, whole_sphere(wave.frequency, step));
     std::vector<FarField> fields =
         direct_fields(wave, rim, plate, voltage, order, whole_sphere(wave.frequency, coarse));
-    for (FarField& field : fields) field = interpolate_sphere(field, step);
+    for (FarField& field : fields) field = interpolated(field, step);
     return fields;
+}
+
+}  // namespace
+
+FarField interpolate_sphere(const FarField& field, double step) {
+    if (!covers_whole_sphere(field))
+        throw std::invalid_argument("interpolation needs a far field over the whole sphere at equal steps");
+    return interpolated(field, step);
+}
+
+std::vector<FarField> panel_far_fields(const Wave& wave, const Rim& rim, const Plate& plate,
+                                       const Eigen::MatrixXcd& voltage, DiffractionOrder order, double step) {
+    return interpolated_fields(wave, rim, plate, voltage, order,
+                               0.5 * pi / quarter_intervals(wave, plate, field_margin), step);
 }
 
 Eigen::MatrixXcd mutual_powers(const std::vector<FarField>& fields) {
@@ -246,8 +294,8 @@ Eigen::MatrixXcd mutual_powers(const std::vector<FarField>& fields) {
 Eigen::MatrixXcd panel_powers(const Wave& wave, const Rim& rim, const Plate& plate, const Eigen::MatrixXcd& voltage,
                               DiffractionOrder order) {
     // Products of two fields hold twice the harmonics of one.
-    const double fine = 0.25 * pi / quarter_intervals(wave, plate);
-    return mutual_powers(panel_far_fields(wave, rim, plate, voltage, order, fine));
+    const double coarse = 0.5 * pi / quarter_intervals(wave, plate, power_margin);
+    return mutual_powers(interpolated_fields(wave, rim, plate, voltage, order, coarse, 0.5 * coarse));
 }
 
 }  // namespace panelwright::solver
