@@ -23,7 +23,8 @@ One HDF5 file holds one design. This page is generated from the table that the p
   frequencies in `/frequency_hz` are those of the port response. Both scales bear the name `frequency`.
 - Angles are rounded to 1e-10 degree, so a whole degree is found by comparing for equality.
 - A file is written in memory and then to disk in one go, and read likewise: no file stays open or locked.
-- A program reads all files whose `format_version` is at most its own; new datasets alone do not raise it.
+- `format_version` rises with every change that an older program could not read; a program refuses files of a newer
+  version than its own.
 
 METHOD stands for `aperture`, `strip` or `surface`; the root attribute `methods` lists those in the file.
 )";
