@@ -162,10 +162,9 @@ std::vector<Triangle> closed_band(const Loops& seen, std::size_t right_points) {
 }
 
 /// The upper half, from the right end of the line through the axis to its left end, and its mirror image.
-std::vector<Triangle> mirrored_band(const Loops& seen, std::size_t half_height, std::size_t width) {
+std::vector<Triangle> mirrored_band(const Loops& seen, std::size_t half_height) {
     const std::size_t half_sides = seen.inner.size() / 2;
     const std::size_t half_points = seen.outer.size() / 2;
-    assert(half_points == 2 * half_height + width);
     const std::span<const Vector2d> inner(seen.inner.data(), half_sides + 1);
     const std::span<const Vector2d> outer(seen.outer.data() + half_height, half_points + 1);
     std::vector<Triangle> triangles = in_loops(band(inner, outer), half_sides + 1, seen, half_height);
@@ -210,8 +209,7 @@ Ring ring(const Layout& plan, const Tube& tube) {
     const int height = tube.block_y.cells();
     const bool in_the_middle = plan.mirror_symmetric && tube.y == 0.0;
     std::vector<Triangle> triangles = in_the_middle
-                                          ? mirrored_band(seen, static_cast<std::size_t>(height / 2),
-                                                          static_cast<std::size_t>(tube.block_x.cells()))
+                                          ? mirrored_band(seen, static_cast<std::size_t>(height / 2))
                                           : closed_band(seen, static_cast<std::size_t>(height) + 1);
     assert(triangles.size() == seen.inner.size() + seen.outer.size());
     for (Triangle& triangle : triangles) {
