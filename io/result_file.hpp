@@ -36,7 +36,8 @@ struct StoredResult {
 
 /// Reads a file made by `write_result`; every number comes back to the last digit. Throws FileError naming
 /// what is wrong: no HDF5 file, truncated, of another program or a newer layout, a dataset missing or
-/// misshapen.
+/// misshapen. Single bytes that changed on the disk are not caught: the format has no checksums, and the HDF5
+/// library trusts it.
 StoredResult read_result(const std::filesystem::path& path);
 
 /// docs/datasets.md, whole.
