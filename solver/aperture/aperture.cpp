@@ -147,7 +147,7 @@ std::vector<std::string> aperture_remarks(const mesh::Panel& panel, const Task& 
             "rim over bare metal.");
     if (const auto* tab = std::get_if<mesh::Tab>(&panel.feed); tab != nullptr && tab->notch_depth > 0.0)
         out.emplace_back(
-            "The slits beside the tab are taken as closed and the tab as a microstrip line: the match is approximate.");
+            "The tab between its slits is modelled as a line coupled to the patch: the match is approximate.");
     const mesh::Reflector& r = panel.reflector;
     if (std::fabs(r.offset_x) + 0.5 * panel.patch.length > 0.5 * r.length ||
         std::fabs(r.offset_y) + 0.5 * panel.patch.width > 0.5 * r.width)

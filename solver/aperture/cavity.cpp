@@ -2,6 +2,7 @@
 
 #include <Eigen/LU>
 #include <algorithm>
+#include <array>
 #include <cmath>
 #include <stdexcept>
 
@@ -36,6 +37,18 @@ LineGreen line_green(Complex g, double length, double source, double at) {
     return {value, slope};
 }
 
+/// One of the places where a pillar's current runs.
+struct Branch {
+    double x;      ///< from the cavity's end [m]
+    double share;  ///< of the pillar's current
+};
+
+/// A pillar's places; the second share is 0 for most.
+std::array<Branch, 2> branches(const Cavity& cavity, const Pillar& pillar) {
+    return {Branch{pillar.x + 0.5 * cavity.length, 1.0 - pillar.second_share},
+            Branch{pillar.second_x + 0.5 * cavity.length, pillar.second_share}};
+}
+
 /// Decay constant along x of term n.
 Complex decay(const Cavity& cavity, const Wave& wave, double loss, int n) {
     const double across = n * pi / cavity.width;
@@ -63,9 +76,11 @@ Complex transfer_impedance(const Cavity& cavity, const Wave& wave, double loss, 
         const double weight = (n == 0 ? 1.0 : 2.0) / cavity.width *
                               std::cos(across * (source.y + 0.5 * cavity.width)) * sinc(0.5 * across * source.width) *
                               std::cos(across * (at.y + 0.5 * cavity.width)) * sinc(0.5 * across * at.width);
-        sum += weight * line_green(decay(cavity, wave, loss, n), cavity.length, source.x + 0.5 * cavity.length,
-                                   at.x + 0.5 * cavity.length)
-                            .value;
+        const Complex g = decay(cavity, wave, loss, n);
+        for (const Branch& from : branches(cavity, source))
+            for (const Branch& to : branches(cavity, at))
+                if (const double share = from.share * to.share; share != 0.0)
+                    sum += weight * share * line_green(g, cavity.length, from.x, to.x).value;
     }
     return Complex(0.0, wave.omega * vacuum_permeability * cavity.height) * sum;
 }
@@ -91,23 +106,26 @@ std::vector<CavityField> cavity_field(const Cavity& cavity, const Wave& wave, do
                               sinc(0.5 * across * pillars[p].width));
         }
         const Complex strength = scale * currents(static_cast<Eigen::Index>(p));
-        const double source = pillars[p].x + 0.5 * cavity.length;
+        const auto sources = branches(cavity, pillars[p]);
 #pragma omp parallel for schedule(static)
         for (std::ptrdiff_t i = 0; i < size; ++i) {
             const Eigen::Vector2d& place = points[static_cast<std::size_t>(i)];
             const double x = std::clamp(place.x() + 0.5 * cavity.length, 0.0, cavity.length);
             const double y = std::clamp(place.y() + 0.5 * cavity.width, 0.0, cavity.width);
             CavityField sum{0.0, Eigen::Vector2cd::Zero()};
-            for (int n = 0; n < count; ++n) {
-                const auto term = static_cast<std::size_t>(n);
-                // Terms that have died out along x add nothing more.
-                if (n > 8 && decays[term].real() * std::fabs(x - source) > 25.0) break;
-                const LineGreen green = line_green(decays[term], cavity.length, source, x);
-                const double across = n * pi / cavity.width;
-                const double cosine = std::cos(across * y);
-                sum.voltage += weights[term] * cosine * green.value;
-                sum.gradient.x() += weights[term] * cosine * green.slope;
-                sum.gradient.y() -= weights[term] * across * std::sin(across * y) * green.value;
+            for (const Branch& source : sources) {
+                if (source.share == 0.0) continue;
+                for (int n = 0; n < count; ++n) {
+                    const auto term = static_cast<std::size_t>(n);
+                    // Terms that have died out along x add nothing more.
+                    if (n > 8 && decays[term].real() * std::fabs(x - source.x) > 25.0) break;
+                    const LineGreen green = line_green(decays[term], cavity.length, source.x, x);
+                    const double across = n * pi / cavity.width;
+                    const double cosine = weights[term] * source.share * std::cos(across * y);
+                    sum.voltage += cosine * green.value;
+                    sum.gradient.x() += cosine * green.slope;
+                    sum.gradient.y() -= weights[term] * source.share * across * std::sin(across * y) * green.value;
+                }
             }
             CavityField& total = field[static_cast<std::size_t>(i)];
             total.voltage += strength * sum.voltage;

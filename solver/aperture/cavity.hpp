@@ -29,6 +29,8 @@ struct Pillar {
     double x = 0.0;      ///< [m]
     double y = 0.0;      ///< [m]
     double width = 0.0;  ///< [m], positive
+    double second_x = 0.0;      ///< where the rest of the current runs [m]
+    double second_share = 0.0;  ///< share of the current that runs at `second_x` instead of `x`, 0..1
 };
 
 /// The flat strip that equals a round pin of `diameter` [m].

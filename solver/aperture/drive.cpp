@@ -14,8 +14,12 @@ Complex fundamental_amplitude(const ApertureModel& model, const Wave& wave, doub
     const Cavity& cavity = model.cavity;
     const double mode = pi / cavity.length;
     Complex overlap = 0.0;
-    for (std::size_t p = 0; p < model.pillars.size(); ++p)
-        overlap += currents(static_cast<Eigen::Index>(p)) * std::sin(mode * model.pillars[p].x);
+    for (std::size_t p = 0; p < model.pillars.size(); ++p) {
+        const Pillar& pillar = model.pillars[p];
+        overlap += currents(static_cast<Eigen::Index>(p)) *
+                   ((1.0 - pillar.second_share) * std::sin(mode * pillar.x) +
+                    pillar.second_share * std::sin(mode * pillar.second_x));
+    }
     const Complex detuning =
         mode * mode - wave.wavenumber * wave.wavenumber * cavity.permittivity * Complex(1.0, -loss);
     return Complex(0.0, wave.omega * vacuum_permeability * cavity.height) * 2.0 / (cavity.length * cavity.width) *

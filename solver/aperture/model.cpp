@@ -1,6 +1,7 @@
 #include "solver/aperture/model.hpp"
 
 #include <algorithm>
+#include <boost/math/special_functions/ellint_1.hpp>
 #include <cmath>
 
 #include "solver/aperture/closed_formulas.hpp"
@@ -32,12 +33,36 @@ double upright_strip_inductance(double width, double height) {
     return 0.5 * vacuum_permeability * bar / (2.0 * pi) * log_part;
 }
 
-/// The strip's line and where its current enters the cavity.
-FeedLine tab_line(const mesh::Tab& tab, const mesh::Spacer& spacer) {
-    const double permittivity = hammerstad_jensen_permittivity(spacer.permittivity, spacer.height, tab.width);
-    const double slowness = std::sqrt(permittivity);
-    return {microstrip_impedance_in_air(tab.width / spacer.height) / slowness, tab.notch_depth + tab.reach, slowness,
-            upright_strip_inductance(tab.width, spacer.height)};
+/// Capacitance a metre between the strip and the patch across both slits [F/m].
+double slit_capacitance(const mesh::Tab& tab, double permittivity) {
+    const double k = tab.width / (tab.width + 2.0 * tab.notch_gap);
+    const double ratio = boost::math::ellint_1(k) / boost::math::ellint_1(std::sqrt(1.0 - k * k));
+    return 4.0 * vacuum_permittivity * 0.5 * (1.0 + permittivity) * ratio;
+}
+
+/// The tab's strip: where its current enters the cavity, and the line from there to the foot.
+struct TabFeed {
+    Pillar pillar;
+    FeedLine line;
+};
+
+TabFeed tab_feed(const mesh::Tab& tab, const mesh::Patch& patch, const mesh::Spacer& spacer) {
+    const double edge = -0.5 * patch.length;
+    const double slowness =
+        std::sqrt(hammerstad_jensen_permittivity(spacer.permittivity, spacer.height, tab.width));
+    TabFeed feed;
+    feed.pillar = {edge + tab.notch_depth, 0.0, tab.width, edge, 0.0};
+    feed.line = {0.0, microstrip_impedance_in_air(tab.width / spacer.height) / slowness, tab.reach, slowness,
+                 upright_strip_inductance(tab.width, spacer.height)};
+    if (tab.notch_depth > 0.0) {
+        const double to_reflector = vacuum_permittivity * spacer.permittivity * tab.width / spacer.height;
+        const double to_patch = slit_capacitance(tab, spacer.permittivity);
+        feed.pillar.second_share = to_patch / (to_reflector + to_patch);
+        // In air the inductance and capacitance of a line multiply to mu0 e0; the dielectric leaves the inductance alone.
+        const double in_air = vacuum_permittivity * tab.width / spacer.height + slit_capacitance(tab, 1.0);
+        feed.line.slit_inductance = vacuum_permeability * vacuum_permittivity / in_air * tab.notch_depth;
+    }
+    return feed;
 }
 
 }  // namespace
@@ -50,14 +75,15 @@ ApertureModel aperture_model(const mesh::Panel& panel) {
     model.cavity = {panel.patch.length + 2.0 * extension, panel.patch.width + 2.0 * extension, h,
                     model.fringe.effective_permittivity};
     if (const auto* probe = std::get_if<mesh::Probe>(&panel.feed)) {
-        model.pillars.push_back({probe->x, probe->y, equivalent_strip(probe->diameter)});
+        model.pillars.push_back({probe->x, probe->y, equivalent_strip(probe->diameter), 0.0, 0.0});
     } else {
         const auto& tab = std::get<mesh::Tab>(panel.feed);
-        model.pillars.push_back({-0.5 * panel.patch.length + tab.notch_depth, 0.0, tab.width});
-        model.line = tab_line(tab, panel.spacer);
+        const TabFeed feed = tab_feed(tab, panel.patch, panel.spacer);
+        model.pillars.push_back(feed.pillar);
+        model.line = feed.line;
     }
     for (const mesh::Post& post : panel.posts)
-        model.pillars.push_back({post.x, post.y, equivalent_strip(post.diameter)});
+        model.pillars.push_back({post.x, post.y, equivalent_strip(post.diameter), 0.0, 0.0});
     const double rim_height = std::max(rim_level * h, lowest_rim * std::max(model.cavity.length, model.cavity.width));
     model.rim = rectangle_rim(model.cavity.length, model.cavity.width, rim_height, rim_spacing * rim_height);
     const mesh::Reflector& reflector = panel.reflector;
@@ -68,9 +94,10 @@ ApertureModel aperture_model(const mesh::Panel& panel) {
 
 Complex at_foot(const FeedLine& line, const Wave& wave, Complex load) {
     if (!(line.impedance > 0.0)) return load;
+    const Complex end = load + Complex(0.0, wave.omega * line.slit_inductance);
     const Complex turn(0.0, std::tan(wave.wavenumber * line.slowness * line.length));
-    const Complex start = line.impedance * (load + line.impedance * turn) / (line.impedance + load * turn);
-    return start + Complex(0.0, wave.omega * line.inductance);
+    const Complex start = line.impedance * (end + line.impedance * turn) / (line.impedance + end * turn);
+    return start + Complex(0.0, wave.omega * line.foot_inductance);
 }
 
 CavityLoss cavity_loss(const mesh::Panel& panel, const ApertureModel& model, const Wave& wave) {

@@ -10,12 +10,14 @@
 
 namespace panelwright::solver {
 
-/// A lossless line from the feed's foot to the place where its current enters the cavity.
+/// What lies between the feed's foot and the cavity, without loss: from the cavity outwards an inductance, a line, and an
+/// inductance at the foot. All zero for a pin.
 struct FeedLine {
-    double impedance = 0.0;   ///< characteristic [ohm]; 0 = no line
-    double length = 0.0;      ///< [m]
-    double slowness = 1.0;    ///< square root of the effective permittivity
-    double inductance = 0.0;  ///< of the upright part at the foot [H]
+    double slit_inductance = 0.0;  ///< of the strip between its slits [H]
+    double impedance = 0.0;        ///< characteristic, of the strip past the patch's edge [ohm]
+    double length = 0.0;           ///< of that strip [m]
+    double slowness = 1.0;         ///< square root of its effective permittivity
+    double foot_inductance = 0.0;  ///< of the upright part [H]
 };
 
 /// A panel as the aperture method sees it.
@@ -28,10 +30,16 @@ struct ApertureModel {
     Plate plate;
 };
 
-/// Builds the picture. The cavity outreaches the patch by the open-end extension on all four sides; the rim carries the
-/// radiating edges at the cavity's ends, half a height beyond the patch's sides, at the patch's height. A tab is a
-/// microstrip line as long as notch and reach together, ending in a strip inductance where it is bent down; the slits
-/// beside it are taken as closed.
+/// Builds the picture. The cavity outreaches the patch by the open-end extension on all four sides; the rim runs along its
+/// walls, at twice the patch's height.
+///
+/// A tab's strip between the slits is a line coupled to the patch beside it: with the capacitances a metre C_s to the
+/// reflector (a parallel plate) and C_m to the patch across the slits (coplanar strip in free space, 4 e0 K(m)/K(1 - m),
+/// m = (w/(w + 2 g))^2; C. P. Wen, IEEE Trans. Microwave Theory Tech. 17(12), 1969), the strip's voltage follows that of the
+/// patch by the share C_m/(C_s + C_m) and stays at that of the slits' end by the rest. By reciprocity its current enters
+/// the patch's field in the same shares, at the patch's edge and at the slits' end; the strip's own inductance is
+/// mu0 e0/(C_s + C_m) a metre, both taken in air. Over a thin laminate C_s rules and the usual inset feed comes out; under a thick air
+/// patch the slits hardly lower the resistance and act as a series inductance. The slits' effect on the mode is left out.
 ApertureModel aperture_model(const mesh::Panel& panel);
 
 /// Impedance at the foot of `line` when it ends in `load` [ohm].
