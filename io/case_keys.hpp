@@ -94,6 +94,7 @@ std::string one_of(std::span<const std::string_view> words);
 inline constexpr std::size_t most_pattern_frequencies = 101;
 inline constexpr std::size_t most_posts = 64;
 inline constexpr std::size_t most_vary_blocks = 16;
+inline constexpr std::size_t most_varied_keys = 64;
 inline constexpr std::size_t most_designs = 1'000'000;
 inline constexpr std::size_t longest_title = 200;
 

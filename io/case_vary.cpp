@@ -89,6 +89,11 @@ class VaryReader {
                              list == nullptr ? found(member->value) : "an empty list", example));
             return {};
         }
+        if (list->size() > most_varied_keys) {
+            fail(member->value.at, fmt::format("{}.keys: found {} keys; allowed: at most {}", name,
+                                               list->size(), most_varied_keys));
+            return {};
+        }
         bool complete = true;
         for (const Value& entry : *list) {
             const auto* text = std::get_if<std::string>(&entry.data);

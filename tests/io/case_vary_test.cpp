@@ -207,6 +207,14 @@ const std::vector<BadBlock> bad_blocks = {
 INSTANTIATE_TEST_SUITE_P(All, VaryBlockSlip, testing::ValuesIn(bad_blocks),
                          [](const testing::TestParamInfo<BadBlock>& block) { return block.param.name; });
 
+TEST(Vary, BoundsTheKeysOfABlock) {
+    std::string names = "\"spacer.height\"";
+    for (int i = 0; i < 64; ++i) names += ", \"spacer.height\"";
+    const auto error = error_of(study("[[vary]]\nkeys = [" + names + "]\nvalues = [\"14 mm\"]\n"));
+    ASSERT_TRUE(error.has_value());
+    EXPECT_STREQ(error->what(), "spoilt.toml:24:8: vary[1].keys: found 65 keys; allowed: at most 64");
+}
+
 TEST(Vary, ConductivityNeedsACaseWithoutAMetalsName) {
     const std::string block = "[[vary]]\nkeys = [\"patch.conductivity\"]\nvalues = [\"1e7 S/m\"]\n";
     EXPECT_EQ(design(parse_case(study(block), "a"), 0).panel.patch.conductivity, 1e7);
