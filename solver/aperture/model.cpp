@@ -25,14 +25,6 @@ double microstrip_impedance_in_air(double u) {
     return vacuum_impedance / (2.0 * pi) * std::log(f / u + std::sqrt(1.0 + 4.0 / (u * u)));
 }
 
-/// Inductance [H] of an upright flat strip of `width` and `height` on the reflector: half that of a bar twice as long, its
-/// image included; F. W. Grover, Inductance Calculations, 1946, ch. 5.
-double upright_strip_inductance(double width, double height) {
-    const double bar = 2.0 * height;
-    const double log_part = std::log(2.0 * bar / width) + 0.5 + 0.2235 * width / bar;
-    return 0.5 * vacuum_permeability * bar / (2.0 * pi) * log_part;
-}
-
 /// Capacitance a metre between the strip and the patch across both slits [F/m].
 double slit_capacitance(const mesh::Tab& tab, double permittivity) {
     const double k = tab.width / (tab.width + 2.0 * tab.notch_gap);
@@ -52,8 +44,7 @@ TabFeed tab_feed(const mesh::Tab& tab, const mesh::Patch& patch, const mesh::Spa
         std::sqrt(hammerstad_jensen_permittivity(spacer.permittivity, spacer.height, tab.width));
     TabFeed feed;
     feed.pillar = {edge + tab.notch_depth, 0.0, tab.width, edge, 0.0};
-    feed.line = {0.0, microstrip_impedance_in_air(tab.width / spacer.height) / slowness, tab.reach, slowness,
-                 upright_strip_inductance(tab.width, spacer.height)};
+    feed.line = {0.0, microstrip_impedance_in_air(tab.width / spacer.height) / slowness, tab.reach, slowness};
     if (tab.notch_depth > 0.0) {
         const double to_reflector = vacuum_permittivity * spacer.permittivity * tab.width / spacer.height;
         const double to_patch = slit_capacitance(tab, spacer.permittivity);
@@ -96,8 +87,7 @@ Complex at_foot(const FeedLine& line, const Wave& wave, Complex load) {
     if (!(line.impedance > 0.0)) return load;
     const Complex end = load + Complex(0.0, wave.omega * line.slit_inductance);
     const Complex turn(0.0, std::tan(wave.wavenumber * line.slowness * line.length));
-    const Complex start = line.impedance * (end + line.impedance * turn) / (line.impedance + end * turn);
-    return start + Complex(0.0, wave.omega * line.foot_inductance);
+    return line.impedance * (end + line.impedance * turn) / (line.impedance + end * turn);
 }
 
 CavityLoss cavity_loss(const mesh::Panel& panel, const ApertureModel& model, const Wave& wave) {

@@ -10,14 +10,13 @@
 
 namespace panelwright::solver {
 
-/// What lies between the feed's foot and the cavity, without loss: from the cavity outwards an inductance, a line, and an
-/// inductance at the foot. All zero for a pin.
+/// What lies between the feed's foot and the cavity, without loss: from the cavity outwards an inductance and a line. All
+/// zero for a pin. The upright part has no inductance of its own here: the cavity's field of its current holds it.
 struct FeedLine {
     double slit_inductance = 0.0;  ///< of the strip between its slits [H]
     double impedance = 0.0;        ///< characteristic, of the strip past the patch's edge [ohm]
     double length = 0.0;           ///< of that strip [m]
     double slowness = 1.0;         ///< square root of its effective permittivity
-    double foot_inductance = 0.0;  ///< of the upright part [H]
 };
 
 /// A panel as the aperture method sees it.
