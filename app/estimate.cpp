@@ -25,7 +25,7 @@ Estimate aperture(const io::Case& design) {
     Estimate cost;
     cost.triangles = mesh::predicted_size(panel, solver::aperture_mesh_options(panel, task)).triangles;
     cost.memory = 10e6 + 150.0 * directions * patterns;
-    cost.seconds = 0.05 + 0.08 * area + patterns * (0.05 + 0.04 * area) * directions / usual_directions;
+    cost.seconds = 0.02 + 0.03 * area + patterns * (0.04 + 0.018 * area) * directions / usual_directions;
     return cost;
 }
 
