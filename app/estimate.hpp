@@ -14,8 +14,8 @@ struct Estimate {
     double seconds = 0.0;       ///< with one thread, writing included [s]
 };
 
-/// Estimates the cost of `design` with `method`. The time is that of one core of a server processor of 2.5 GHz or so, and
-/// good to a factor of about three.
+/// Estimates the cost of `design` with `method`. The time is that of one core of a server processor of 2.5
+/// GHz or so, and good to a factor of about three.
 Estimate estimate(const io::Case& design, solver::Method method);
 
 }  // namespace panelwright::app

@@ -36,6 +36,7 @@ ExitStatus outcome(const Command& command) {
 }
 
 int run_program(int argc, char** argv) {
+    reserve_standard_streams();
     CLI::App program{
         "Designs and analyses flat patch antennas over finite reflectors, from a case file to figures.",
         "panelwright"};

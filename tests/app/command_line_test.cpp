@@ -5,6 +5,7 @@
 #include <regex>
 
 #include "io/case.hpp"
+#include "io/result_file.hpp"
 #include "tests/app/cases.hpp"
 #include "tests/app/process.hpp"
 
@@ -93,6 +94,16 @@ TEST(CommandLine, SaysWhenStandardOutputIsFull) {
     const Ended ended = Process({"/bin/sh", "-c", program() + " keys > /dev/full"}, folder.path()).wait();
     EXPECT_EQ(ended.status, 1);
     EXPECT_NE(ended.err.find("standard output"), std::string::npos) << ended.err;
+}
+
+TEST(CommandLine, KeepsMessagesOutOfFilesWhenStandardErrorIsClosed) {
+    const TemporaryFolder folder;
+    folder.write("gauge.toml", small_case());
+    const Ended ended =
+        Process({"/bin/sh", "-c", program() + " run gauge.toml --out r 2>&-"}, folder.path()).wait();
+    EXPECT_EQ(ended.status, 0);
+    EXPECT_EQ(content(folder / "r/case.toml"), io::read_case(folder / "gauge.toml").resolved);
+    EXPECT_NO_THROW(io::read_result(folder / "r/result.h5"));
 }
 
 TEST(Check, SaysWhatWouldRunAndSolvesNothing) {
