@@ -20,6 +20,19 @@ bool on_tab_strip(const mesh::Panel& panel, const Eigen::Vector3d& place) {
            place.x() < -0.5 * panel.patch.length + tab->notch_depth;
 }
 
+/// A place in the cavity, and how fast it moves with the place on the patch.
+struct Stretched {
+    double place;  ///< [m]
+    double rate;
+};
+
+/// Where in the cavity the field of `place` on the patch is found, along one axis: edge to wall, but the middle, where pins
+/// and posts stand, nearly where it is.
+Stretched stretched(double place, double patch_side, double cavity_side) {
+    const double more = (cavity_side / patch_side - 1.0) * std::pow(2.0 * place / patch_side, 4);
+    return {place * (1.0 + more), 1.0 + 5.0 * more};
+}
+
 /// Current of the open plate at `place` [A/m]: physical optics shaped by each edge.
 Eigen::Vector3cd plate_current(const PlateField& field, const Plate& plate, const Wave& wave,
                                const Eigen::Vector3d& place) {
@@ -67,12 +80,11 @@ Eigen::Vector3cd upright_current(const mesh::Panel& panel, const ApertureModel& 
 SurfaceCurrent aperture_currents(const mesh::Panel& panel, const ApertureModel& model, const Wave& wave,
                                  const DrivenCavity& state, Complex feed_current, const Eigen::VectorXcd& rim_voltage,
                                  const mesh::SheetMesh& mesh) {
-    const double stretch_x = model.cavity.length / panel.patch.length;
-    const double stretch_y = model.cavity.width / panel.patch.width;
     const Eigen::VectorXcd currents = feed_current * state.currents;
     const std::size_t count = mesh.triangles.size();
     SurfaceCurrent out(count, Eigen::Vector3cd::Zero());
     std::vector<Eigen::Vector2d> inside;      // places in the cavity
+    std::vector<Eigen::Vector2d> squeeze;     // of the lines of current there, which keeps their total
     std::vector<std::size_t> inside_triangle;
     std::vector<std::size_t> open_triangle;
     for (std::size_t t = 0; t < count; ++t) {
@@ -83,7 +95,10 @@ SurfaceCurrent aperture_currents(const mesh::Panel& panel, const ApertureModel& 
         } else if (part == mesh::Part::patch && on_tab_strip(panel, place)) {
             out[t] = {currents(0) / std::get<mesh::Tab>(panel.feed).width, 0.0, 0.0};
         } else if (under_patch(panel, place)) {
-            inside.emplace_back(place.x() * stretch_x, place.y() * stretch_y);
+            const Stretched x = stretched(place.x(), panel.patch.length, model.cavity.length);
+            const Stretched y = stretched(place.y(), panel.patch.width, model.cavity.width);
+            inside.emplace_back(x.place, y.place);
+            squeeze.emplace_back(y.rate, x.rate);
             inside_triangle.push_back(t);
         } else if (part == mesh::Part::reflector) {
             open_triangle.push_back(t);
@@ -94,7 +109,8 @@ SurfaceCurrent aperture_currents(const mesh::Panel& panel, const ApertureModel& 
     for (std::size_t i = 0; i < inside.size(); ++i) {
         const std::size_t t = inside_triangle[i];
         const double sense = mesh.part[t] == mesh::Part::patch ? 1.0 : -1.0;
-        out[t] = {sense * scale * field[i].gradient.x(), sense * scale * field[i].gradient.y(), 0.0};
+        out[t] = {sense * scale * squeeze[i].x() * field[i].gradient.x(),
+                  sense * scale * squeeze[i].y() * field[i].gradient.y(), 0.0};
     }
     const PlateField rim_field(model.rim, rim_voltage, wave.wavenumber);
     const auto open = static_cast<std::ptrdiff_t>(open_triangle.size());

@@ -53,33 +53,44 @@ PlateField::PlateField(const Rim& rim, const Eigen::MatrixXcd& voltage, double w
 }
 
 Eigen::Matrix<Complex, 2, Eigen::Dynamic> PlateField::at(const Eigen::Vector2d& place) const {
-    const Eigen::ArrayXd dx = place.x() - x_;
-    const Eigen::ArrayXd dy = place.y() - y_;
-    const Eigen::ArrayXd distance = (dx.square() + dy.square() + height_ * height_).sqrt();
-    const Eigen::ArrayXd kr = wavenumber_ * distance;
+    const Eigen::Index n = x_.size();
+    Eigen::ArrayXd kr(n);
+    Eigen::ArrayXd cosine(n);
+    Eigen::ArrayXd sine(n);
+    for (Eigen::Index i = 0; i < n; ++i) {
+        const double dx = place.x() - x_(i);
+        const double dy = place.y() - y_(i);
+        kr(i) = wavenumber_ * std::sqrt(dx * dx + dy * dy + height_ * height_);
+    }
     // Sine and cosine in loops of their own: together they would become one scalar call.
-    Eigen::ArrayXd cosine(kr.size());
-    Eigen::ArrayXd sine(kr.size());
-    for (Eigen::Index i = 0; i < kr.size(); ++i) cosine(i) = std::cos(kr(i));
-    for (Eigen::Index i = 0; i < kr.size(); ++i) sine(i) = std::sin(kr(i));
+    for (Eigen::Index i = 0; i < n; ++i) cosine(i) = std::cos(kr(i));
+    for (Eigen::Index i = 0; i < n; ++i) sine(i) = std::sin(kr(i));
     // H = 2 (-j k / eta) G [(1 - j/kr - 1/kr^2) M + (-1 + 3j/kr + 3/kr^2) (M.r) r], M = -voltage * element.
-    const Eigen::ArrayXd inverse = kr.inverse();
-    const Eigen::ArrayXd inverse2 = inverse.square();
-    const Eigen::ArrayXd scale = (2.0 * wavenumber_ / vacuum_impedance / (4.0 * pi)) * distance.inverse();
-    // j exp(-j kr) = sin kr + j cos kr.
-    const Eigen::ArrayXd wave_re = scale * sine;
-    const Eigen::ArrayXd wave_im = scale * cosine;
-    const Eigen::ArrayXd along = (element_x_ * dx + element_y_ * dy) / distance.square();
-    const Eigen::ArrayXd flat = 1.0 - inverse2;
-    const Eigen::ArrayXd across_re = wave_re * flat + wave_im * inverse;
-    const Eigen::ArrayXd across_im = wave_im * flat - wave_re * inverse;
-    const Eigen::ArrayXd steep = 3.0 * inverse2 - 1.0;
-    const Eigen::ArrayXd radial_re = (wave_re * steep - 3.0 * wave_im * inverse) * along;
-    const Eigen::ArrayXd radial_im = (wave_im * steep + 3.0 * wave_re * inverse) * along;
-    const Eigen::ArrayXd x_re = across_re * element_x_ + radial_re * dx;
-    const Eigen::ArrayXd x_im = across_im * element_x_ + radial_im * dx;
-    const Eigen::ArrayXd y_re = across_re * element_y_ + radial_re * dy;
-    const Eigen::ArrayXd y_im = across_im * element_y_ + radial_im * dy;
+    const double scale = 2.0 * wavenumber_ * wavenumber_ / (vacuum_impedance * 4.0 * pi);
+    Eigen::ArrayXd x_re(n);
+    Eigen::ArrayXd x_im(n);
+    Eigen::ArrayXd y_re(n);
+    Eigen::ArrayXd y_im(n);
+    for (Eigen::Index i = 0; i < n; ++i) {
+        const double dx = wavenumber_ * (place.x() - x_(i));
+        const double dy = wavenumber_ * (place.y() - y_(i));
+        const double inverse = 1.0 / kr(i);
+        const double inverse2 = inverse * inverse;
+        // j exp(-j kr) = sin kr + j cos kr.
+        const double wave_re = scale * inverse * sine(i);
+        const double wave_im = scale * inverse * cosine(i);
+        const double along = (element_x_(i) * dx + element_y_(i) * dy) * inverse2;
+        const double flat = 1.0 - inverse2;
+        const double steep = 3.0 * inverse2 - 1.0;
+        const double across_re = wave_re * flat + wave_im * inverse;
+        const double across_im = wave_im * flat - wave_re * inverse;
+        const double radial_re = (wave_re * steep - 3.0 * wave_im * inverse) * along;
+        const double radial_im = (wave_im * steep + 3.0 * wave_re * inverse) * along;
+        x_re(i) = across_re * element_x_(i) + radial_re * dx;
+        x_im(i) = across_im * element_x_(i) + radial_im * dx;
+        y_re(i) = across_re * element_y_(i) + radial_re * dy;
+        y_im(i) = across_im * element_y_(i) + radial_im * dy;
+    }
     Eigen::Matrix<Complex, 2, Eigen::Dynamic> field(2, voltage_re_.cols());
     for (Eigen::Index s = 0; s < voltage_re_.cols(); ++s) {
         const auto re = voltage_re_.col(s);
