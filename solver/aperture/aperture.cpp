@@ -39,11 +39,13 @@ double interpolate(const std::vector<double>& points, const std::vector<double>&
     return above / below;
 }
 
-/// Frequencies at which the radiation loss is settled by a far field of its own; between them it is smooth, but for the
-/// ripple of the waves between rim and reflector edges, which needs a point about each quarter period.
+/// Frequencies at which the radiation loss is settled by a far field of its own; between them it is smooth,
+/// but for the ripple of the waves between rim and reflector edges, which needs a point about each quarter
+/// period.
 std::vector<double> loss_frequencies(const ApertureModel& model, const std::vector<double>& band) {
     const Plate& plate = model.plate;
-    const double radius = std::hypot(std::max(-plate.x_from, plate.x_to), std::max(-plate.y_from, plate.y_to));
+    const double radius =
+        std::hypot(std::max(-plate.x_from, plate.x_to), std::max(-plate.y_from, plate.y_to));
     const double phase = 2.0 * pi * (band.back() - band.front()) / speed_of_light * radius;
     const int count = std::clamp(3 + static_cast<int>(std::ceil(2.0 * phase / pi)), 3, 12);
     return chebyshev_points(band.front(), band.back(), count);
@@ -55,7 +57,8 @@ RimVoltages starting_voltages(const mesh::Panel& panel, const ApertureModel& mod
     return rim_voltages(model, wave, start);
 }
 
-PortResponse port_response(const mesh::Panel& panel, const ApertureModel& model, const std::vector<double>& band) {
+PortResponse port_response(const mesh::Panel& panel, const ApertureModel& model,
+                           const std::vector<double>& band) {
     const std::vector<double> at = loss_frequencies(model, band);
     std::vector<double> losses;
     double least = std::numeric_limits<double>::infinity();
@@ -71,7 +74,8 @@ PortResponse port_response(const mesh::Panel& panel, const ApertureModel& model,
     for (const double frequency : band) {
         const Wave wave(frequency);
         const double loss = std::max(interpolate(at, losses, frequency), 0.5 * least);
-        port.impedance.push_back(at_foot(model.line, wave, driven(panel, model, wave, loss).cavity_impedance));
+        port.impedance.push_back(
+            at_foot(model.line, wave, driven(panel, model, wave, loss).cavity_impedance));
     }
     return port;
 }
@@ -84,8 +88,8 @@ struct PatternSolution {
     DrivenCavity state;
 };
 
-PatternSolution pattern_solution(const mesh::Panel& panel, const ApertureModel& model, double frequency, double step,
-                                 const mesh::SheetMesh& mesh) {
+PatternSolution pattern_solution(const mesh::Panel& panel, const ApertureModel& model, double frequency,
+                                 double step, const mesh::SheetMesh& mesh) {
     const Wave wave(frequency);
     const RimVoltages voltages = starting_voltages(panel, model, wave);
     const std::vector<FarField> fields =
@@ -112,20 +116,26 @@ PatternSolution pattern_solution(const mesh::Panel& panel, const ApertureModel& 
 
 void require(const mesh::Panel& panel, const Task& task) {
     if (const auto wrong = mesh::problems(panel); !wrong.empty())
-        throw std::invalid_argument("the panel cannot be solved: " + wrong.front().key + ": " + wrong.front().message);
-    if (task.band.empty() || !std::is_sorted(task.band.begin(), task.band.end()) || !(task.band.front() > 0.0))
+        throw std::invalid_argument("the panel cannot be solved: " + wrong.front().key + ": " +
+                                    wrong.front().message);
+    if (task.band.empty() || !std::is_sorted(task.band.begin(), task.band.end()) ||
+        !(task.band.front() > 0.0))
         throw std::invalid_argument("the band must hold at least one frequency, ascending and positive");
 }
 
 }  // namespace
 
 mesh::MeshOptions aperture_mesh_options(const mesh::Panel& panel, const Task& task) {
-    const double shortest = speed_of_light / std::max(task.band.back(), task.pattern_at.empty() ? 0.0 : task.pattern_at.back());
-    const double share = task.accuracy == Accuracy::quick ? 10.0 : task.accuracy == Accuracy::normal ? 16.0 : 24.0;
+    const double shortest =
+        speed_of_light / std::max(task.band.back(), task.pattern_at.empty() ? 0.0 : task.pattern_at.back());
+    const double share = task.accuracy == Accuracy::quick    ? 10.0
+                         : task.accuracy == Accuracy::normal ? 16.0
+                                                             : 24.0;
     mesh::MeshOptions options;
     options.cell_size = shortest / share / std::sqrt(panel.spacer.permittivity);
     options.edge_cell = 0.5 * options.cell_size;
-    for (int tries = 0; tries < 12 && mesh::predicted_size(panel, options).triangles > most_triangles; ++tries) {
+    for (int tries = 0; tries < 12 && mesh::predicted_size(panel, options).triangles > most_triangles;
+         ++tries) {
         options.cell_size *= 1.4;
         options.edge_cell *= 1.4;
     }
@@ -136,22 +146,27 @@ std::vector<std::string> aperture_remarks(const mesh::Panel& panel, const Task& 
     const double wavelength = 2.0 * speed_of_light / (task.band.front() + task.band.back());
     std::vector<std::string> out;
     if (panel.spacer.height > 0.06 * wavelength)
-        out.emplace_back("The patch stands higher than 0.06 wavelength: the resonance was verified up to there.");
+        out.emplace_back(
+            "The patch stands higher than 0.06 wavelength: the resonance was verified up to there.");
     if (std::min(panel.reflector.length, panel.reflector.width) < 0.65 * wavelength)
         out.emplace_back(
-            "A reflector side is shorter than 0.65 wavelength: edge diffraction of second order is not enough there, "
+            "A reflector side is shorter than 0.65 wavelength: edge diffraction of second order is not "
+            "enough there, "
             "expect 1 dB in gain and 4 dB or more in front-to-back ratio.");
     if (panel.spacer.permittivity > 1.0)
         out.emplace_back(
-            "The dielectric is taken into account in the cavity and as a surface-wave loss; the far field is that of the "
+            "The dielectric is taken into account in the cavity and as a surface-wave loss; the far field is "
+            "that of the "
             "rim over bare metal.");
     if (const auto* tab = std::get_if<mesh::Tab>(&panel.feed); tab != nullptr && tab->notch_depth > 0.0)
         out.emplace_back(
-            "The tab between its slits is modelled as a line coupled to the patch: the match is approximate.");
+            "The tab between its slits is modelled as a line coupled to the patch: the match is "
+            "approximate.");
     const mesh::Reflector& r = panel.reflector;
     if (std::fabs(r.offset_x) + 0.5 * panel.patch.length > 0.5 * r.length ||
         std::fabs(r.offset_y) + 0.5 * panel.patch.width > 0.5 * r.width)
-        out.emplace_back("The patch overhangs the reflector: the cavity model assumes metal under the whole patch.");
+        out.emplace_back(
+            "The patch overhangs the reflector: the cavity model assumes metal under the whole patch.");
     return out;
 }
 
@@ -164,7 +179,8 @@ Solution solve_aperture(const mesh::Panel& panel, const Task& task) {
     solution.mesh = mesh::triangulate(panel, aperture_mesh_options(panel, task));
     solution.port = port_response(panel, model, task.band);
     HealthEntry balance{"power_balance", "1", "radiated plus lost power over accepted power", {}, true};
-    HealthEntry quality{"cavity_quality_factor", "1", "quality factor of the loaded cavity, all losses included", {}, true};
+    HealthEntry quality{
+        "cavity_quality_factor", "1", "quality factor of the loaded cavity, all losses included", {}, true};
     for (const double frequency : task.pattern_at) {
         PatternSolution pattern = pattern_solution(panel, model, frequency, task.pattern_step, solution.mesh);
         const Powers& p = pattern.powers;
@@ -178,10 +194,16 @@ Solution solve_aperture(const mesh::Panel& panel, const Task& task) {
     const double seconds = std::chrono::duration<double>(std::chrono::steady_clock::now() - begin).count();
     solution.health = {balance,
                        quality,
-                       {"cavity_resonance_hz", "Hz", "resonance of the patch alone over an unbounded reflector",
-                        {model.fringe.resonance}, false},
-                       {"unknowns", "1", "currents solved for: those through the feed and the posts",
-                        {static_cast<double>(model.pillars.size())}, false},
+                       {"cavity_resonance_hz",
+                        "Hz",
+                        "resonance of the patch alone over an unbounded reflector",
+                        {model.fringe.resonance},
+                        false},
+                       {"unknowns",
+                        "1",
+                        "currents solved for: those through the feed and the posts",
+                        {static_cast<double>(model.pillars.size())},
+                        false},
                        {"seconds", "s", "wall time of the method", {seconds}, false}};
     return solution;
 }

@@ -15,10 +15,12 @@ int terms(const Cavity& cavity, double width) {
 }
 
 /// sin(u)/u.
-double sinc(double u) { return std::fabs(u) < 1e-6 ? 1.0 - u * u / 6.0 : std::sin(u) / u; }
+double sinc(double u) {
+    return std::fabs(u) < 1e-6 ? 1.0 - u * u / 6.0 : std::sin(u) / u;
+}
 
-/// Green's function along x of one term, with Neumann walls at 0 and `length`, and its derivative by the place `at`:
-/// cosh(g x<) cosh(g (length - x>)) / (g sinh(g length)), written without growing exponentials.
+/// Green's function along x of one term, with Neumann walls at 0 and `length`, and its derivative by the
+/// place `at`: cosh(g x<) cosh(g (length - x>)) / (g sinh(g length)), written without growing exponentials.
 struct LineGreen {
     Complex value;
     Complex slope;
@@ -64,7 +66,9 @@ void require(const Cavity& cavity, double loss) {
 
 }  // namespace
 
-double equivalent_strip(double diameter) { return 0.5 * diameter * std::exp(1.5); }
+double equivalent_strip(double diameter) {
+    return 0.5 * diameter * std::exp(1.5);
+}
 
 Complex transfer_impedance(const Cavity& cavity, const Wave& wave, double loss, const Pillar& source,
                            const Pillar& at) {
@@ -74,7 +78,8 @@ Complex transfer_impedance(const Cavity& cavity, const Wave& wave, double loss, 
     for (int n = 0; n < count; ++n) {
         const double across = n * pi / cavity.width;
         const double weight = (n == 0 ? 1.0 : 2.0) / cavity.width *
-                              std::cos(across * (source.y + 0.5 * cavity.width)) * sinc(0.5 * across * source.width) *
+                              std::cos(across * (source.y + 0.5 * cavity.width)) *
+                              sinc(0.5 * across * source.width) *
                               std::cos(across * (at.y + 0.5 * cavity.width)) * sinc(0.5 * across * at.width);
         const Complex g = decay(cavity, wave, loss, n);
         for (const Branch& from : branches(cavity, source))
@@ -124,7 +129,8 @@ std::vector<CavityField> cavity_field(const Cavity& cavity, const Wave& wave, do
                     const double cosine = weights[term] * source.share * std::cos(across * y);
                     sum.voltage += cosine * green.value;
                     sum.gradient.x() += cosine * green.slope;
-                    sum.gradient.y() -= weights[term] * source.share * across * std::sin(across * y) * green.value;
+                    sum.gradient.y() -=
+                        weights[term] * source.share * across * std::sin(across * y) * green.value;
                 }
             }
             CavityField& total = field[static_cast<std::size_t>(i)];
@@ -135,7 +141,8 @@ std::vector<CavityField> cavity_field(const Cavity& cavity, const Wave& wave, do
     return field;
 }
 
-Eigen::VectorXcd pillar_currents(const Cavity& cavity, const Wave& wave, double loss, std::span<const Pillar> pillars) {
+Eigen::VectorXcd pillar_currents(const Cavity& cavity, const Wave& wave, double loss,
+                                 std::span<const Pillar> pillars) {
     if (pillars.empty()) throw std::invalid_argument("a cavity needs a feed");
     const auto n = static_cast<Eigen::Index>(pillars.size());
     Eigen::VectorXcd currents = Eigen::VectorXcd::Zero(n);
@@ -154,7 +161,8 @@ Eigen::VectorXcd pillar_currents(const Cavity& cavity, const Wave& wave, double 
     return currents;
 }
 
-Complex driving_impedance(const Cavity& cavity, const Wave& wave, double loss, std::span<const Pillar> pillars) {
+Complex driving_impedance(const Cavity& cavity, const Wave& wave, double loss,
+                          std::span<const Pillar> pillars) {
     const Eigen::VectorXcd currents = pillar_currents(cavity, wave, loss, pillars);
     Complex voltage = 0.0;
     for (std::size_t p = 0; p < pillars.size(); ++p)

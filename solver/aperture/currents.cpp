@@ -10,7 +10,8 @@ namespace {
 
 /// Whether (x, y) lies under the patch.
 bool under_patch(const mesh::Panel& panel, const Eigen::Vector3d& place) {
-    return std::fabs(place.x()) <= 0.5 * panel.patch.length && std::fabs(place.y()) <= 0.5 * panel.patch.width;
+    return std::fabs(place.x()) <= 0.5 * panel.patch.length &&
+           std::fabs(place.y()) <= 0.5 * panel.patch.width;
 }
 
 /// Whether (x, y) lies on the strip between the slits of a tab.
@@ -26,8 +27,8 @@ struct Stretched {
     double rate;
 };
 
-/// Where in the cavity the field of `place` on the patch is found, along one axis: edge to wall, but the middle, where pins
-/// and posts stand, nearly where it is.
+/// Where in the cavity the field of `place` on the patch is found, along one axis: edge to wall, but the
+/// middle, where pins and posts stand, nearly where it is.
 Stretched stretched(double place, double patch_side, double cavity_side) {
     const double more = (cavity_side / patch_side - 1.0) * std::pow(2.0 * place / patch_side, 4);
     return {place * (1.0 + more), 1.0 + 5.0 * more};
@@ -53,8 +54,9 @@ Eigen::Vector3cd plate_current(const PlateField& field, const Plate& plate, cons
 }
 
 /// Current of the pillar whose part `part` stands nearest to `place` [A/m], upwards.
-Eigen::Vector3cd upright_current(const mesh::Panel& panel, const ApertureModel& model, const Eigen::VectorXcd& currents,
-                                 mesh::Part part, const Eigen::Vector3d& place) {
+Eigen::Vector3cd upright_current(const mesh::Panel& panel, const ApertureModel& model,
+                                 const Eigen::VectorXcd& currents, mesh::Part part,
+                                 const Eigen::Vector3d& place) {
     if (part == mesh::Part::feed) {
         if (const auto* probe = std::get_if<mesh::Probe>(&panel.feed))
             return {0.0, 0.0, currents(0) / (pi * probe->diameter)};
@@ -72,19 +74,20 @@ Eigen::Vector3cd upright_current(const mesh::Panel& panel, const ApertureModel& 
             nearest = p;
         }
     }
-    return {0.0, 0.0, currents(static_cast<Eigen::Index>(nearest)) / (pi * panel.posts[nearest - 1].diameter)};
+    return {0.0, 0.0,
+            currents(static_cast<Eigen::Index>(nearest)) / (pi * panel.posts[nearest - 1].diameter)};
 }
 
 }  // namespace
 
 SurfaceCurrent aperture_currents(const mesh::Panel& panel, const ApertureModel& model, const Wave& wave,
-                                 const DrivenCavity& state, Complex feed_current, const Eigen::VectorXcd& rim_voltage,
-                                 const mesh::SheetMesh& mesh) {
+                                 const DrivenCavity& state, Complex feed_current,
+                                 const Eigen::VectorXcd& rim_voltage, const mesh::SheetMesh& mesh) {
     const Eigen::VectorXcd currents = feed_current * state.currents;
     const std::size_t count = mesh.triangles.size();
     SurfaceCurrent out(count, Eigen::Vector3cd::Zero());
-    std::vector<Eigen::Vector2d> inside;      // places in the cavity
-    std::vector<Eigen::Vector2d> squeeze;     // of the lines of current there, which keeps their total
+    std::vector<Eigen::Vector2d> inside;   // places in the cavity
+    std::vector<Eigen::Vector2d> squeeze;  // of the lines of current there, which keeps their total
     std::vector<std::size_t> inside_triangle;
     std::vector<std::size_t> open_triangle;
     for (std::size_t t = 0; t < count; ++t) {

@@ -22,13 +22,13 @@ Complex fundamental_amplitude(const ApertureModel& model, const Wave& wave, doub
     }
     const Complex detuning =
         mode * mode - wave.wavenumber * wave.wavenumber * cavity.permittivity * Complex(1.0, -loss);
-    return Complex(0.0, wave.omega * vacuum_permeability * cavity.height) * 2.0 / (cavity.length * cavity.width) *
-           overlap / detuning;
+    return Complex(0.0, wave.omega * vacuum_permeability * cavity.height) * 2.0 /
+           (cavity.length * cavity.width) * overlap / detuning;
 }
 
-/// Strength of the rim's line currents per cavity voltage: raised by what their level over the plate costs them in radiated
-/// power, cos^2(k z cos theta) at the mean cos^2 theta of a broad beam (3/5, that of an intensity cos^2 theta), so that
-/// the cavity is damped as by a rim at the plate.
+/// Strength of the rim's line currents per cavity voltage: raised by what their level over the plate costs
+/// them in radiated power, cos^2(k z cos theta) at the mean cos^2 theta of a broad beam (3/5, that of an
+/// intensity cos^2 theta), so that the cavity is damped as by a rim at the plate.
 double rim_strength(const Rim& rim, const Wave& wave) {
     return 1.0 / std::cos(std::min(std::sqrt(0.6) * wave.wavenumber * rim.height, 1.0));
 }
@@ -69,7 +69,8 @@ double starting_loss(const ApertureModel& model, const Wave& wave) {
     return 2.0 * conductance / (wave.omega * capacitance);
 }
 
-DrivenCavity driven(const mesh::Panel& panel, const ApertureModel& model, const Wave& wave, double radiation_loss) {
+DrivenCavity driven(const mesh::Panel& panel, const ApertureModel& model, const Wave& wave,
+                    double radiation_loss) {
     DrivenCavity out;
     out.radiation_loss = radiation_loss;
     out.parts = cavity_loss(panel, model, wave);
@@ -86,7 +87,8 @@ DrivenCavity settle(const mesh::Panel& panel, const ApertureModel& model, const 
     for (int step = 0; step < 12; ++step) {
         const double wanted = power(powers, state.amplitude);
         const double lost = 0.5 * state.cavity_impedance.real();
-        // Power lost as radiation is its share of the whole; the loss tangent that makes it `wanted` follows at once.
+        // Power lost as radiation is its share of the whole; the loss tangent that makes it `wanted` follows
+        // at once.
         const double next = std::clamp(state.loss * wanted / lost, 1e-6, 0.5);
         const double change = std::fabs(next - state.radiation_loss);
         state = driven(panel, model, wave, next);

@@ -26,12 +26,14 @@ struct Edge {
 std::array<Edge, 4> edges_of(const Plate& plate) {
     const Eigen::Vector2d x = Eigen::Vector2d::UnitX();
     const Eigen::Vector2d y = Eigen::Vector2d::UnitY();
-    return {Edge{x, y, plate.x_to, plate.y_from, plate.y_to}, Edge{-x, y, -plate.x_from, plate.y_from, plate.y_to},
-            Edge{y, x, plate.y_to, plate.x_from, plate.x_to}, Edge{-y, x, -plate.y_from, plate.x_from, plate.x_to}};
+    return {Edge{x, y, plate.x_to, plate.y_from, plate.y_to},
+            Edge{-x, y, -plate.x_from, plate.y_from, plate.y_to},
+            Edge{y, x, plate.y_to, plate.x_from, plate.x_to},
+            Edge{-y, x, -plate.y_from, plate.x_from, plate.x_to}};
 }
 
-/// Normalised Fresnel integral K(a) = exp(j pi/4)/sqrt(pi) times the integral of exp(-j t^2) from a to infinity, without
-/// its factor exp(-j a^2).
+/// Normalised Fresnel integral K(a) = exp(j pi/4)/sqrt(pi) times the integral of exp(-j t^2) from a to
+/// infinity, without its factor exp(-j a^2).
 Complex smooth_k(double a) {
     static const Complex scale = std::polar(1.0 / std::sqrt(pi), 0.25 * pi);
     return scale * scaled_fresnel_tail(a);

@@ -20,12 +20,12 @@ constexpr int pieces = 16;
 
 /// The rim as straight pieces, counter-clockwise, with the static part of their interaction.
 struct Loop {
-    Eigen::ArrayXd x;        ///< (n) centres [m]
-    Eigen::ArrayXd x_from;   ///< (n) ends [m]
-    Eigen::ArrayXd x_to;     ///< (n)
-    Eigen::ArrayXd length;   ///< (n) [m]
-    Eigen::ArrayXXd along;   ///< (n, n) cosine between pieces
-    Eigen::ArrayXXd distance;  ///< (n, n) between centres, never below the line's radius [m]
+    Eigen::ArrayXd x;             ///< (n) centres [m]
+    Eigen::ArrayXd x_from;        ///< (n) ends [m]
+    Eigen::ArrayXd x_to;          ///< (n)
+    Eigen::ArrayXd length;        ///< (n) [m]
+    Eigen::ArrayXXd along;        ///< (n, n) cosine between pieces
+    Eigen::ArrayXXd distance;     ///< (n, n) between centres, never below the line's radius [m]
     Eigen::ArrayXXd static_part;  ///< (n, n) integral of 1/R over the source piece
 };
 
@@ -74,13 +74,14 @@ Loop make_loop(double length, double width, double radius) {
     return loop;
 }
 
-/// Susceptance [S] with which the rim loads the patch, for the edge voltage sin(q x): the reactive part of the line
-/// current's reaction with itself, current and charge, over the reflector (factor 2).
+/// Susceptance [S] with which the rim loads the patch, for the edge voltage sin(q x): the reactive part of
+/// the line current's reaction with itself, current and charge, over the reflector (factor 2).
 double rim_susceptance(const Loop& loop, double k, double q) {
     const Eigen::ArrayXd voltage = (q * loop.x).sin();
     const Eigen::ArrayXd charge = ((q * loop.x_to).sin() - (q * loop.x_from).sin()) / loop.length;
     const Eigen::ArrayXXd kernel =
-        (loop.static_part + (((k * loop.distance).cos() - 1.0) / loop.distance).rowwise() * loop.length.transpose()) /
+        (loop.static_part +
+         (((k * loop.distance).cos() - 1.0) / loop.distance).rowwise() * loop.length.transpose()) /
         (4.0 * pi);
     const Eigen::ArrayXd voltage_piece = voltage * loop.length;
     const Eigen::ArrayXd charge_piece = charge * loop.length;
@@ -89,8 +90,8 @@ double rim_susceptance(const Loop& loop, double k, double q) {
     return 2.0 * k / vacuum_impedance * (current_part - charge_part / (k * k));
 }
 
-/// By how much a sheet's thickness widens it at each edge [m]: H. A. Wheeler, IEEE Trans. Microwave Theory Tech. 25(8),
-/// 631-647, 1977, as used by I. J. Bahl & R. Garg, Proc. IEEE 65(11), 1977 (from memory).
+/// By how much a sheet's thickness widens it at each edge [m]: H. A. Wheeler, IEEE Trans. Microwave Theory
+/// Tech. 25(8), 631-647, 1977, as used by I. J. Bahl & R. Garg, Proc. IEEE 65(11), 1977 (from memory).
 double thickness_widening(double thickness, double height) {
     return thickness > 0.0 ? thickness / (2.0 * pi) * (1.0 + std::log(2.0 * height / thickness)) : 0.0;
 }
@@ -101,26 +102,29 @@ Fringing fringing(const mesh::Patch& patch, const mesh::Spacer& spacer) {
     const double h = spacer.height;
     const double er = spacer.permittivity;
     if (!(patch.length > 0.0 && patch.width > 0.0 && h > 0.0 && er >= 1.0 && patch.thickness >= 0.0))
-        throw std::invalid_argument("a patch needs positive sides, a positive height and a permittivity of 1 or more");
+        throw std::invalid_argument(
+            "a patch needs positive sides, a positive height and a permittivity of 1 or more");
 
     const double widening = thickness_widening(patch.thickness, h);
     const double length = patch.length + 2.0 * widening;
     const double width = patch.width + 2.0 * widening;
     const double slowness = std::sqrt(effective_permittivity(er, h, width));
     const double edge = dielectric_edge * (er - 1.0);
-    const Loop loop = make_loop(length + 2.0 * line_offset * h, width + 2.0 * line_offset * h, h / (pi * std::numbers::e));
+    const Loop loop =
+        make_loop(length + 2.0 * line_offset * h, width + 2.0 * line_offset * h, h / (pi * std::numbers::e));
 
-    // Total susceptance for the voltage sin(q x): of the line under the patch, of the rim, of the dielectric's edges.
+    // Total susceptance for the voltage sin(q x): of the line under the patch, of the rim, of the
+    // dielectric's edges.
     const auto susceptance = [&](double k) {
         const double q = k * slowness;
         const double sine = 0.5 * length - std::sin(q * length) / (2.0 * q);    // integral of sin^2(q x)
         const double cosine = 0.5 * length + std::sin(q * length) / (2.0 * q);  // integral of cos^2(q x)
         const double end = std::sin(0.5 * q * length);
         return width / (h * k * vacuum_impedance) * (er * k * k * sine - q * q * cosine) +
-               rim_susceptance(loop, k, q) +
-               k / vacuum_impedance * edge * 2.0 * (width * end * end + sine);
+               rim_susceptance(loop, k, q) + k / vacuum_impedance * edge * 2.0 * (width * end * end + sine);
     };
-    // The susceptance rises through zero between a quarter-wave patch and one a little longer than half a wave.
+    // The susceptance rises through zero between a quarter-wave patch and one a little longer than half a
+    // wave.
     double low = 0.25 * pi / (length * slowness);
     double high = 1.1 * pi / (length * slowness);
     for (int step = 0; step < 60 && high - low > 1e-9 * high; ++step) {

@@ -14,7 +14,8 @@ GaussRule gauss_rule(int count) {
         rule.nodes.push_back(node);
         rule.weights.push_back(2.0 / ((1.0 - node * node) * slope * slope));
     };
-    const std::vector<double> zeros = boost::math::legendre_p_zeros<double>(count);  // those not below 0, ascending
+    const std::vector<double> zeros =
+        boost::math::legendre_p_zeros<double>(count);  // those not below 0, ascending
     for (auto zero = zeros.rbegin(); zero != zeros.rend(); ++zero)
         if (*zero > 0.0) add(-*zero);
     for (const double zero : zeros) add(zero);

@@ -15,8 +15,8 @@ struct GaussRule {
 /// The rule of `count` points (1 to 64), to machine precision. Throws std::invalid_argument.
 GaussRule gauss_rule(int count);
 
-/// A composite rule: every stretch between neighbouring `breaks` (ascending) is cut into equal panels no longer than
-/// `longest`, each with `count` points.
+/// A composite rule: every stretch between neighbouring `breaks` (ascending) is cut into equal panels no
+/// longer than `longest`, each with `count` points.
 GaussRule composite_rule(std::span<const double> breaks, double longest, int count);
 
 }  // namespace panelwright::solver

@@ -9,17 +9,18 @@
 namespace panelwright::solver {
 namespace {
 
-/// Level of the radiating rim, in heights of the patch: its field bulges above the patch's edge. Fitted, the only free
-/// constant of the aperture, to the full solution of docs/verification.md over eight reflector sizes.
+/// Level of the radiating rim, in heights of the patch: its field bulges above the patch's edge. Fitted, the
+/// only free constant of the aperture, to the full solution of docs/verification.md over eight reflector
+/// sizes.
 constexpr double rim_level = 2.0;
 /// Spacing of the rim's points, in heights; see `rectangle_rim`.
 constexpr double rim_spacing = 0.75;
-/// A rim much lower than its sides is raised to this share of the longer one: so near the plate its height no longer
-/// matters, but each point would need its own.
+/// A rim much lower than its sides is raised to this share of the longer one: so near the plate its height no
+/// longer matters, but each point would need its own.
 constexpr double lowest_rim = 0.015;
 
-/// Characteristic impedance [ohm] of a microstrip in air, width over height `u`: E. Hammerstad & O. Jensen, IEEE MTT-S
-/// Symposium Digest, 407-409, 1980.
+/// Characteristic impedance [ohm] of a microstrip in air, width over height `u`: E. Hammerstad & O. Jensen,
+/// IEEE MTT-S Symposium Digest, 407-409, 1980.
 double microstrip_impedance_in_air(double u) {
     const double f = 6.0 + (2.0 * pi - 6.0) * std::exp(-std::pow(30.666 / u, 0.7528));
     return vacuum_impedance / (2.0 * pi) * std::log(f / u + std::sqrt(1.0 + 4.0 / (u * u)));
@@ -49,7 +50,8 @@ TabFeed tab_feed(const mesh::Tab& tab, const mesh::Patch& patch, const mesh::Spa
         const double to_reflector = vacuum_permittivity * spacer.permittivity * tab.width / spacer.height;
         const double to_patch = slit_capacitance(tab, spacer.permittivity);
         feed.pillar.second_share = to_patch / (to_reflector + to_patch);
-        // In air the inductance and capacitance of a line multiply to mu0 e0; the dielectric leaves the inductance alone.
+        // In air the inductance and capacitance of a line multiply to mu0 e0; the dielectric leaves the
+        // inductance alone.
         const double in_air = vacuum_permittivity * tab.width / spacer.height + slit_capacitance(tab, 1.0);
         feed.line.slit_inductance = vacuum_permeability * vacuum_permittivity / in_air * tab.notch_depth;
     }
@@ -75,7 +77,8 @@ ApertureModel aperture_model(const mesh::Panel& panel) {
     }
     for (const mesh::Post& post : panel.posts)
         model.pillars.push_back({post.x, post.y, equivalent_strip(post.diameter), 0.0, 0.0});
-    const double rim_height = std::max(rim_level * h, lowest_rim * std::max(model.cavity.length, model.cavity.width));
+    const double rim_height =
+        std::max(rim_level * h, lowest_rim * std::max(model.cavity.length, model.cavity.width));
     model.rim = rectangle_rim(model.cavity.length, model.cavity.width, rim_height, rim_spacing * rim_height);
     const mesh::Reflector& reflector = panel.reflector;
     model.plate = {reflector.offset_x - 0.5 * reflector.length, reflector.offset_x + 0.5 * reflector.length,

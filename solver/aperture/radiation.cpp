@@ -13,8 +13,8 @@
 namespace panelwright::solver {
 namespace {
 
-/// Nodes along one axis of the plate: panels of at most 0.4 wavelength, and short ones under the rim, where the
-/// field rises within the rim's height.
+/// Nodes along one axis of the plate: panels of at most 0.4 wavelength, and short ones under the rim, where
+/// the field rises within the rim's height.
 GaussRule plate_rule(double from, double to, double wall, double height, double wavelength) {
     std::vector<double> breaks{from, 0.0, to};
     for (const double side : {-wall, wall})
@@ -43,7 +43,8 @@ PlateCurrent plate_current_grid(const Wave& wave, const Rim& rim, const Plate& p
     const GaussRule y = plate_rule(plate.y_from, plate.y_to, 0.5 * rim.width, rim.height, wave.wavelength);
     const auto rows = static_cast<Eigen::Index>(x.nodes.size());
     const auto columns = static_cast<Eigen::Index>(y.nodes.size());
-    PlateCurrent current{x.nodes, y.nodes, std::vector<Eigen::MatrixXcd>(sources, Eigen::MatrixXcd(rows, columns)),
+    PlateCurrent current{x.nodes, y.nodes,
+                         std::vector<Eigen::MatrixXcd>(sources, Eigen::MatrixXcd(rows, columns)),
                          std::vector<Eigen::MatrixXcd>(sources, Eigen::MatrixXcd(rows, columns))};
 #pragma omp parallel for schedule(static)
     for (Eigen::Index j = 0; j < columns; ++j)
@@ -78,7 +79,8 @@ struct RadiationVectors {
     Eigen::ArrayXcd magnetic_y;
 };
 
-/// E_theta and E_phi of one row (one theta) from its radiation vectors; C. A. Balanis, Antenna Theory, 4th ed., (12-10).
+/// E_theta and E_phi of one row (one theta) from its radiation vectors; C. A. Balanis, Antenna Theory, 4th
+/// ed., (12-10).
 void set_row(FarField& field, Eigen::Index row, double k, const RadiationVectors& v) {
     const double cosine = std::cos(field.theta[static_cast<std::size_t>(row)]);
     const Complex scale(0.0, -k / (4.0 * pi));
@@ -98,7 +100,8 @@ void set_row(FarField& field, Eigen::Index row, double k, const RadiationVectors
 /// Whether plate and voltages are their own mirror images in the plane y = 0.
 bool mirror_symmetric(const Rim& rim, const Plate& plate, const Eigen::MatrixXcd& voltage) {
     if (plate.y_from != -plate.y_to) return false;
-    // The rim's sides run round it: the one from +y to -y at either end is mirrored in itself, the other two in each other.
+    // The rim's sides run round it: the one from +y to -y at either end is mirrored in itself, the other two
+    // in each other.
     const double largest = voltage.cwiseAbs().maxCoeff();
     std::map<std::pair<double, double>, Eigen::Index> places;
     const auto key = [](double x, double y) { return std::pair(std::round(x * 1e9), std::round(y * 1e9)); };
@@ -108,7 +111,8 @@ bool mirror_symmetric(const Rim& rim, const Plate& plate, const Eigen::MatrixXcd
         const auto twin = places.find(key(rim.points[i].x(), -rim.points[i].y()));
         if (twin == places.end()) return false;
         const auto row = static_cast<Eigen::Index>(i);
-        if ((voltage.row(row) - voltage.row(twin->second)).cwiseAbs().maxCoeff() > 1e-10 * largest) return false;
+        if ((voltage.row(row) - voltage.row(twin->second)).cwiseAbs().maxCoeff() > 1e-10 * largest)
+            return false;
     }
     return true;
 }
@@ -124,7 +128,8 @@ void mirror(FarField& field) {
 
 /// All sources' fields at the directions of `grid`.
 std::vector<FarField> direct_fields(const Wave& wave, const Rim& rim, const Plate& plate,
-                                    const Eigen::MatrixXcd& voltage, DiffractionOrder order, const FarField& grid) {
+                                    const Eigen::MatrixXcd& voltage, DiffractionOrder order,
+                                    const FarField& grid) {
     const double k = wave.wavenumber;
     const auto sources = static_cast<std::size_t>(voltage.cols());
     const PlateField field(rim, voltage, k);
@@ -192,19 +197,21 @@ std::vector<FarField> direct_fields(const Wave& wave, const Rim& rim, const Plat
     return fields;
 }
 
-/// Harmonics kept beyond k times the radius of the sources, where they end: ten more for four digits of the field
-/// (J. E. Hansen, Spherical Near-field Antenna Measurements, 1988, sec. 2.2), six for three digits of the power.
+/// Harmonics kept beyond k times the radius of the sources, where they end: ten more for four digits of the
+/// field (J. E. Hansen, Spherical Near-field Antenna Measurements, 1988, sec. 2.2), six for three digits of
+/// the power.
 constexpr double field_margin = 10.0;
 constexpr double power_margin = 6.0;
 
 /// Intervals of a quarter circle that resolve the harmonics of a plate's field.
 int quarter_intervals(const Wave& wave, const Plate& plate, double margin) {
-    const double radius = std::hypot(std::max(-plate.x_from, plate.x_to), std::max(-plate.y_from, plate.y_to));
+    const double radius =
+        std::hypot(std::max(-plate.x_from, plate.x_to), std::max(-plate.y_from, plate.y_to));
     return static_cast<int>(std::ceil(0.5 * (wave.wavenumber * radius + margin)));
 }
 
-/// Values of the interpolating trigonometric polynomial through `count` (even) equal steps round the circle, at `angles`:
-/// a real matrix (angles, count).
+/// Values of the interpolating trigonometric polynomial through `count` (even) equal steps round the circle,
+/// at `angles`: a real matrix (angles, count).
 Eigen::MatrixXd circle_interpolation(std::size_t count, const std::vector<double>& angles) {
     const double n = static_cast<double>(count);
     Eigen::MatrixXd out(static_cast<Eigen::Index>(angles.size()), static_cast<Eigen::Index>(count));
@@ -212,13 +219,15 @@ Eigen::MatrixXd circle_interpolation(std::size_t count, const std::vector<double
         for (Eigen::Index j = 0; j < out.cols(); ++j) {
             const double apart = angles[static_cast<std::size_t>(i)] - 2.0 * pi * static_cast<double>(j) / n;
             const double half = std::sin(0.5 * apart);
-            out(i, j) = std::fabs(half) < 1e-12 ? 1.0 : std::sin(0.5 * n * apart) * std::cos(0.5 * apart) / (n * half);
+            out(i, j) = std::fabs(half) < 1e-12
+                            ? 1.0
+                            : std::sin(0.5 * n * apart) * std::cos(0.5 * apart) / (n * half);
         }
     return out;
 }
 
-/// One component interpolated: round phi first, then along full great circles through the poles, on whose far half
-/// both unit vectors point the other way.
+/// One component interpolated: round phi first, then along full great circles through the poles, on whose far
+/// half both unit vectors point the other way.
 ComplexGrid interpolate_component(const ComplexGrid& values, const Eigen::MatrixXd& round_phi,
                                   const Eigen::MatrixXd& round_theta) {
     const Eigen::MatrixXcd wide = values.matrix() * round_phi.transpose().cast<Complex>();
@@ -243,11 +252,13 @@ FarField interpolated(const FarField& field, double step) {
     return out;
 }
 
-/// Fields evaluated at steps of `coarse` and interpolated to `step`; evaluated there at once where `step` is no finer.
+/// Fields evaluated at steps of `coarse` and interpolated to `step`; evaluated there at once where `step` is
+/// no finer.
 std::vector<FarField> interpolated_fields(const Wave& wave, const Rim& rim, const Plate& plate,
-                                          const Eigen::MatrixXcd& voltage, DiffractionOrder order, double coarse,
-                                          double step) {
-    if (coarse <= step) return direct_fields(wave, rim, plate, voltage, order, whole_sphere(wave.frequency, step));
+                                          const Eigen::MatrixXcd& voltage, DiffractionOrder order,
+                                          double coarse, double step) {
+    if (coarse <= step)
+        return direct_fields(wave, rim, plate, voltage, order, whole_sphere(wave.frequency, step));
     std::vector<FarField> fields =
         direct_fields(wave, rim, plate, voltage, order, whole_sphere(wave.frequency, coarse));
     for (FarField& field : fields) field = interpolated(field, step);
@@ -285,14 +296,15 @@ Eigen::MatrixXcd mutual_powers(const std::vector<FarField>& fields) {
             const auto j = static_cast<std::size_t>(b);
             const double both = powers(a, a).real() + powers(b, b).real();
             // |A + B|^2 and |A + jB|^2 hold the real and the imaginary part of A conj(B).
-            powers(a, b) = Complex(0.5 * (power_of(i, 1.0, j) - both), 0.5 * (power_of(i, Complex(0.0, 1.0), j) - both));
+            powers(a, b) =
+                Complex(0.5 * (power_of(i, 1.0, j) - both), 0.5 * (power_of(i, Complex(0.0, 1.0), j) - both));
             powers(b, a) = std::conj(powers(a, b));
         }
     return powers;
 }
 
-Eigen::MatrixXcd panel_powers(const Wave& wave, const Rim& rim, const Plate& plate, const Eigen::MatrixXcd& voltage,
-                              DiffractionOrder order) {
+Eigen::MatrixXcd panel_powers(const Wave& wave, const Rim& rim, const Plate& plate,
+                              const Eigen::MatrixXcd& voltage, DiffractionOrder order) {
     // Products of two fields hold twice the harmonics of one.
     const double coarse = 0.5 * pi / quarter_intervals(wave, plate, power_margin);
     return mutual_powers(interpolated_fields(wave, rim, plate, voltage, order, coarse, 0.5 * coarse));

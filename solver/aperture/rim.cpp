@@ -42,7 +42,8 @@ PlateField::PlateField(const Rim& rim, const Eigen::MatrixXcd& voltage, double w
       element_y_(x_.size()),
       voltage_re_(voltage.real()),
       voltage_im_(voltage.imag()) {
-    if (voltage.rows() != x_.size()) throw std::invalid_argument("one voltage is needed for each point of the rim");
+    if (voltage.rows() != x_.size())
+        throw std::invalid_argument("one voltage is needed for each point of the rim");
     for (Eigen::Index i = 0; i < x_.size(); ++i) {
         const auto point = static_cast<std::size_t>(i);
         x_(i) = rim.points[point].x();

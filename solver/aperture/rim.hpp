@@ -8,8 +8,9 @@
 
 namespace panelwright::solver {
 
-/// The cavity's side walls as magnetic line currents at the patch's height: four straight sides, each a composite
-/// Gauss-Legendre rule. The current at a point is minus the voltage there along `element` (equivalence principle, M = E x n).
+/// The cavity's side walls as magnetic line currents at the patch's height: four straight sides, each a
+/// composite Gauss-Legendre rule. The current at a point is minus the voltage there along `element`
+/// (equivalence principle, M = E x n).
 struct Rim {
     std::vector<Eigen::Vector2d> points;    ///< (n) [m]
     std::vector<Eigen::Vector2d> elements;  ///< (n) tangent, counter-clockwise, times weight [m]
@@ -18,8 +19,9 @@ struct Rim {
     double width = 0.0;                     ///< between the sides along y [m]
 };
 
-/// The rim of a rectangle of `length` by `width` centred on the origin, its points no further apart than `spacing` on a side.
-/// The plate sees single points of the rim as lumps once they stand further apart than about three quarters of the height.
+/// The rim of a rectangle of `length` by `width` centred on the origin, its points no further apart than
+/// `spacing` on a side. The plate sees single points of the rim as lumps once they stand further apart than
+/// about three quarters of the height.
 Rim rectangle_rim(double length, double width, double height, double spacing);
 
 /// The reflector as a perfectly conducting rectangle at z = 0.
@@ -30,9 +32,10 @@ struct Plate {
     double y_to = 0.0;
 };
 
-/// Tangential magnetic field on an unbroken plate below `rim`: twice that of the rim alone, its image being of equal sense.
-/// Exact near field of magnetic current elements (C. A. Balanis, Advanced Engineering Electromagnetics, sec. 6.7). Holds
-/// the rim in the order that the vector loops like; made once for many places.
+/// Tangential magnetic field on an unbroken plate below `rim`: twice that of the rim alone, its image being
+/// of equal sense. Exact near field of magnetic current elements (C. A. Balanis, Advanced Engineering
+/// Electromagnetics, sec. 6.7). Holds the rim in the order that the vector loops like; made once for many
+/// places.
 class PlateField {
   public:
     /// `voltage` (n, s): rim voltage at each rim point for each of s sources [V].
@@ -47,9 +50,9 @@ class PlateField {
   private:
     double wavenumber_;
     double height_;
-    Eigen::ArrayXd x_, y_;                      ///< (n) rim points [m]
-    Eigen::ArrayXd element_x_, element_y_;      ///< (n) rim elements [m]
-    Eigen::ArrayXXd voltage_re_, voltage_im_;   ///< (n, s) [V]
+    Eigen::ArrayXd x_, y_;                     ///< (n) rim points [m]
+    Eigen::ArrayXd element_x_, element_y_;     ///< (n) rim elements [m]
+    Eigen::ArrayXXd voltage_re_, voltage_im_;  ///< (n, s) [V]
 };
 
 }  // namespace panelwright::solver

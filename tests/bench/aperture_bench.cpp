@@ -40,7 +40,8 @@ BENCHMARK(fringing_of_a_patch)->Unit(benchmark::kMillisecond);
 /// Field of the rim at one place on the plate.
 void plate_field(benchmark::State& state) {
     const solver::ApertureModel model = solver::aperture_model(panel_over(0.15));
-    const Eigen::MatrixXcd voltage = Eigen::MatrixXcd::Ones(static_cast<Eigen::Index>(model.rim.points.size()), 2);
+    const Eigen::MatrixXcd voltage =
+        Eigen::MatrixXcd::Ones(static_cast<Eigen::Index>(model.rim.points.size()), 2);
     const solver::PlateField field(model.rim, voltage, 51.1);
     for (auto _ : state) benchmark::DoNotOptimize(field.current({0.04, 0.03}));
     state.counters["rim_points"] = static_cast<double>(model.rim.points.size());
@@ -61,7 +62,8 @@ void edge_piece(benchmark::State& state) {
     double turn = 0.0;
     for (auto _ : state) {
         turn += 1e-3;
-        benchmark::DoNotOptimize(solver::edge_factors(piece, 51.1, {0.5 * std::cos(turn), 0.5 * std::sin(turn)}));
+        benchmark::DoNotOptimize(
+            solver::edge_factors(piece, 51.1, {0.5 * std::cos(turn), 0.5 * std::sin(turn)}));
     }
 }
 BENCHMARK(edge_piece);

@@ -27,7 +27,9 @@ void over_arguments(benchmark::State& state, Function function) {
     state.SetItemsProcessed(static_cast<int64_t>(state.iterations() * x.size()));
 }
 
-void transition(benchmark::State& state) { over_arguments(state, panelwright::solver::transition); }
+void transition(benchmark::State& state) {
+    over_arguments(state, panelwright::solver::transition);
+}
 void tail_of_negative_argument(benchmark::State& state) {
     over_arguments(state, [](double x) { return panelwright::solver::scaled_fresnel_tail(-x); });
 }
