@@ -2,7 +2,6 @@
 #include <gtest/gtest.h>
 
 #include <nlohmann/json.hpp>
-#include <regex>
 
 #include "io/case.hpp"
 #include "io/result_file.hpp"
@@ -18,9 +17,8 @@ TEST(CommandLine, SaysItsVersion) {
     const TemporaryFolder folder;
     const Ended ended = panelwright({"--version"}, folder.path());
     EXPECT_EQ(ended.status, 0);
-    EXPECT_TRUE(
-        std::regex_match(ended.out, std::regex(R"(panelwright \d+\.\d+\.\d+ \(commit [0-9a-z-]+\)\n)")))
-        << ended.out;
+    EXPECT_EQ(ended.out.find("panelwright " PANELWRIGHT_VERSION " (commit "), 0U) << ended.out;
+    EXPECT_TRUE(ended.out.ends_with(")\n")) << ended.out;
 }
 
 TEST(CommandLine, ExplainsItselfAndEveryCommand) {

@@ -5,7 +5,6 @@
 #include <chrono>
 #include <map>
 #include <nlohmann/json.hpp>
-#include <regex>
 #include <sstream>
 #include <thread>
 
@@ -150,8 +149,8 @@ TEST(Study, StopsAtAFaultOfTheWholeRun) {
     const std::string command = "trap '' XFSZ; ulimit -f 64; exec " + program() + " run study.toml --out r";
     const Ended ended = Process({"/bin/sh", "-c", command}, folder.path()).wait();
     EXPECT_EQ(ended.status, 1);
-    EXPECT_TRUE(std::regex_search(ended.err, std::regex("r/designs/000[12]\\.h5: .*File too large")))
-        << ended.err;
+    EXPECT_NE(ended.err.find("panelwright run: r/designs/000"), std::string::npos) << ended.err;
+    EXPECT_NE(ended.err.find(".h5: cannot write: File too large"), std::string::npos) << ended.err;
     EXPECT_FALSE(has_temporaries(folder / "r"));
 }
 
