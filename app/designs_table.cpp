@@ -60,20 +60,35 @@ std::string header(const io::Case& study) {
         }
         for (const auto& entry : solver::figure_table())
             line += fmt::format(",{}.{}", solver::name(method), entry.name);
+        line += fmt::format(",{}.power_balance", solver::name(method));
     }
-    return line + '\n';
+    return line + ",remarks\n";
 }
 
 std::string figure_cells(const DesignRow& row, solver::Method method) {
     const auto found = std::find_if(row.methods.begin(), row.methods.end(),
                                     [&](const MethodFigures& figures) { return figures.method == method; });
     if (found == row.methods.end()) {
-        return std::string(solver::band_figure_table().size() + solver::figure_table().size(), ',');
+        return std::string(solver::band_figure_table().size() + solver::figure_table().size() + 1, ',');
     }
     std::string cells;
     for (const auto& entry : solver::band_figure_table()) cells += ',' + number(found->band.*entry.value);
     for (const auto& entry : solver::figure_table()) cells += ',' + number(found->figures.*entry.value);
-    return cells;
+    return cells + ',' + number(found->power_balance);
+}
+
+/// The power balance at the first pattern frequency; NaN where the method tells none.
+double power_balance(const solver::Solution& solution) {
+    const auto found = std::find_if(solution.health.begin(), solution.health.end(),
+                                    [](const auto& entry) { return entry.name == "power_balance"; });
+    return found == solution.health.end() || found->values.empty() ? std::numeric_limits<double>::quiet_NaN()
+                                                                   : found->values.front();
+}
+
+std::string joined(const std::vector<std::string>& remarks) {
+    std::string text;
+    for (const std::string& remark : remarks) text += (text.empty() ? "" : "; ") + remark;
+    return text;
 }
 
 }  // namespace
@@ -94,8 +109,9 @@ void set_result(DesignRow& row, const solver::Result& result) {
     row.status = DesignStatus::done;
     row.reason.clear();
     row.methods.clear();
+    row.remarks.clear();
     for (const solver::MethodResult& method : result.methods) {
-        MethodFigures figures{method.solution.method, method.band, {}};
+        MethodFigures figures{method.solution.method, method.band, {}, power_balance(method.solution)};
         if (method.figures.empty()) {
             for (const auto& entry : solver::figure_table()) {
                 figures.figures.*entry.value = std::numeric_limits<double>::quiet_NaN();
@@ -105,6 +121,10 @@ void set_result(DesignRow& row, const solver::Result& result) {
             row.pattern_frequency = method.solution.patterns.front().frequency;
         }
         row.methods.push_back(figures);
+        for (const std::string& remark : method.solution.remarks) {
+            if (std::find(row.remarks.begin(), row.remarks.end(), remark) == row.remarks.end())
+                row.remarks.push_back(remark);
+        }
     }
 }
 
@@ -137,7 +157,7 @@ std::string designs_csv(const io::Case& study, const std::vector<DesignRow>& row
         text += fmt::format(",{},{},{}", name(row.status), csv_cell(row.reason),
                             row.methods.empty() ? std::string() : number(row.pattern_frequency));
         for (const solver::Method method : study.methods) text += figure_cells(row, method);
-        text += '\n';
+        text += ',' + csv_cell(joined(row.remarks)) + '\n';
     }
     return text;
 }

@@ -24,6 +24,7 @@ struct MethodFigures {
     solver::Method method = solver::Method::aperture;
     solver::BandFigures band{};
     solver::Figures figures{};
+    double power_balance = std::numeric_limits<double>::quiet_NaN();  ///< radiated plus lost over accepted
 };
 
 /// One design of a study.
@@ -34,6 +35,7 @@ struct DesignRow {
     std::string reason;                                                   ///< why it failed
     double pattern_frequency = std::numeric_limits<double>::quiet_NaN();  ///< of the far-field figures [Hz]
     std::vector<MethodFigures> methods;
+    std::vector<std::string> remarks;  ///< of all methods, each once
 };
 
 /// The figures of a solved design, as they stand in its row.
@@ -46,8 +48,8 @@ std::vector<std::string> varied_columns(const io::Case& study);
 std::vector<DesignRow> design_rows(const io::Case& study);
 
 /// The table as CSV (RFC 4180): design, the varied keys, status, reason, pattern_frequency_hz, then for each
-/// method METHOD.NAME for every band figure and figure. A figure that does not exist is "nan"; cells of a
-/// design without result are empty.
+/// method METHOD.NAME for every band figure and figure and METHOD.power_balance, at last remarks, joined with
+/// "; ". A figure that does not exist is "nan"; cells of a design without result are empty.
 std::string designs_csv(const io::Case& study, const std::vector<DesignRow>& rows);
 
 }  // namespace panelwright::app

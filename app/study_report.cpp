@@ -7,6 +7,9 @@
 #include <algorithm>
 #include <cmath>
 #include <optional>
+#include <string>
+#include <unordered_map>
+#include <vector>
 
 #include "app/report.hpp"
 
@@ -14,6 +17,7 @@ namespace panelwright::app {
 namespace {
 
 constexpr std::size_t most_failures_shown = 10;
+constexpr std::size_t most_remarks_shown = 10;
 
 /// A figure's extremes over the designs of a study.
 struct Range {
@@ -30,6 +34,27 @@ std::size_t number_of(const StudyOutcome& outcome, DesignStatus status) {
     return static_cast<std::size_t>(
         std::count_if(outcome.rows.begin(), outcome.rows.end(),
                       [&](const DesignRow& row) { return row.status == status; }));
+}
+
+/// A remark and the designs that it belongs to.
+struct SharedRemark {
+    std::string text;
+    std::size_t designs;  ///< how many
+    std::size_t first_design;
+};
+
+/// Every remark of a design's solution, in the order in which they first come up.
+std::vector<SharedRemark> shared_remarks(const StudyOutcome& outcome) {
+    std::vector<SharedRemark> all;
+    std::unordered_map<std::string, std::size_t> place;
+    for (const DesignRow& row : outcome.rows) {
+        for (const std::string& remark : row.remarks) {
+            const auto [found, added] = place.try_emplace(remark, all.size());
+            if (added) all.push_back({remark, 0, row.number});
+            ++all[found->second].designs;
+        }
+    }
+    return all;
 }
 
 /// Extremes of what `value` reads from a design's figures; nothing when no design has the figure.
@@ -66,6 +91,8 @@ std::vector<Range> ranges(const StudyOutcome& outcome, solver::Method method) {
     for (const auto& entry : solver::figure_table()) {
         keep(range(outcome, method, entry, [&](const MethodFigures& f) { return f.figures.*entry.value; }));
     }
+    const solver::BandFigureEntry balance{"power_balance", "power balance", "1", {}, nullptr};
+    keep(range(outcome, method, balance, [](const MethodFigures& f) { return f.power_balance; }));
     return all;
 }
 
@@ -95,6 +122,16 @@ std::string study_table(const io::Case& study, const StudyOutcome& outcome) {
                             one.least_design, shown_value(one.greatest, one.unit), one.greatest_design);
         }
     }
+    const std::vector<SharedRemark> remarks = shared_remarks(outcome);
+    for (std::size_t n = 0; n < std::min(remarks.size(), most_remarks_shown); ++n) {
+        text += fmt::format("{}  note on {} design{}, design {} first: {}\n", n == 0 ? "\n" : "",
+                            remarks[n].designs, remarks[n].designs == 1 ? "" : "s", remarks[n].first_design,
+                            remarks[n].text);
+    }
+    if (remarks.size() > most_remarks_shown) {
+        text +=
+            fmt::format("  and {} more notes, listed in designs.csv\n", remarks.size() - most_remarks_shown);
+    }
     return text;
 }
 
@@ -104,6 +141,11 @@ nlohmann::ordered_json study_json(const io::Case& study, const StudyOutcome& out
     for (const DesignRow& row : outcome.rows) {
         if (row.status == DesignStatus::failed)
             failures.push_back({{"design", row.number}, {"reason", row.reason}});
+    }
+    Json remarks = Json::array();
+    for (const SharedRemark& remark : shared_remarks(outcome)) {
+        remarks.push_back(
+            {{"remark", remark.text}, {"designs", remark.designs}, {"first_design", remark.first_design}});
     }
     Json methods = Json::object();
     for (const solver::Method method : study.methods) {
@@ -122,6 +164,7 @@ nlohmann::ordered_json study_json(const io::Case& study, const StudyOutcome& out
             {"failed", number_of(outcome, DesignStatus::failed)},
             {"not_reached", number_of(outcome, DesignStatus::not_reached)},
             {"failures", std::move(failures)},
+            {"remarks", std::move(remarks)},
             {"methods", std::move(methods)}};
 }
 

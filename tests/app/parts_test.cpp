@@ -93,6 +93,8 @@ TEST(DesignsTable, QuotesCellsAndTellsMissingFromNotExisting) {
     rows[0].methods = {MethodFigures{}};
     rows[0].methods[0].band.best_match_db = -12.5;
     rows[0].methods[0].band.vswr2_from_hz = std::nan("");
+    rows[0].methods[0].power_balance = 0.98;
+    rows[0].remarks = {"thin, very", "wide"};
     rows[1].status = DesignStatus::failed;
     rows[1].reason = "a \"bad\" one, really";
     const std::string csv = designs_csv(study, rows);
@@ -100,7 +102,10 @@ TEST(DesignsTable, QuotesCellsAndTellsMissingFromNotExisting) {
                        "aperture.resonance_hz,"),
               0U);
     EXPECT_NE(csv.find("\n1,200,200,done,,870000000,0,0,-12.5,nan,"), std::string::npos) << csv;
-    EXPECT_NE(csv.find("\n2,202,202,failed,\"a \"\"bad\"\" one, really\",,,"), std::string::npos) << csv;
+    EXPECT_NE(csv.find(",aperture.power_balance,remarks\n"), std::string::npos) << csv;
+    EXPECT_NE(csv.find(",0.98,\"thin, very; wide\"\n2,202,202,failed,\"a \"\"bad\"\" one, really\",,,"),
+              std::string::npos)
+        << csv;
     EXPECT_NE(csv.find("\n3,204,204,not reached,,,,"), std::string::npos) << csv;
 }
 

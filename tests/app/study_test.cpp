@@ -73,6 +73,15 @@ TEST(Study, RecordsADesignThatFailsAndGoesOn) {
     EXPECT_EQ(std::stod(table[3].at("aperture.peak_gain_dbi")),
               stored.result.methods[0].figures[0].peak_gain_dbi);
     EXPECT_EQ(std::stod(table[3].at("aperture.best_match_hz")), stored.result.methods[0].band.best_match_hz);
+
+    const auto& health = stored.result.methods[0].solution.health;
+    const auto balance = std::find_if(health.begin(), health.end(),
+                                      [](const auto& entry) { return entry.name == "power_balance"; });
+    ASSERT_NE(balance, health.end());
+    EXPECT_EQ(std::stod(table[3].at("aperture.power_balance")), balance->values.front());
+    const Json& range = shown["methods"]["aperture"]["power_balance"];
+    EXPECT_LE(range["least"].get<double>(), balance->values.front());
+    EXPECT_GE(range["greatest"].get<double>(), balance->values.front());
 }
 
 TEST(Study, KeepsDesignsThatAreDoneAndRepairsDamagedOnes) {
