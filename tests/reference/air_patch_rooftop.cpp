@@ -54,13 +54,13 @@ Complex upright_reaction(double wavenumber, double width, double height) {
     return Complex(sum, -wavenumber * height * bar) / (4.0 * pi);
 }
 
-/// Resonance on one grid: the peak of a parabola through three samples of 1/R, sought twice.
+/// Resonance on one grid: the peak of a parabola through three samples of 1/R, sought three times.
 RooftopResonance resonance_on_grid(double length, double width, double height, double guess, int across) {
     const RooftopSheet sheet = rectangle_sheet(length, width, height, across);
     const RooftopFeed feed{across / 5, static_cast<int>((sheet.metal.cols() - 1) / 2)};
     const Rooftop patch(sheet);
     RooftopResonance found{guess, 0.0};
-    for (const double step : {0.02, 0.01}) {
+    for (const double step : {0.04, 0.02, 0.01}) {
         std::array<double, 3> inverse{};
         for (int i = -1; i <= 1; ++i) {
             const double k = 2.0 * pi * found.frequency * (1.0 + i * step) / solver::speed_of_light;

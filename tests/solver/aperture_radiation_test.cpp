@@ -206,7 +206,7 @@ TEST(MutualPowers, AreThoseOfAnyMixture) {
     }
     // Their own, coarser sphere gives the same to three digits, as it says.
     const Eigen::MatrixXcd quick =
-        panel_powers(wave, rim, off_centre, voltages(rim), DiffractionOrder::second);
+        mutual_powers(power_fields(wave, rim, off_centre, voltages(rim), DiffractionOrder::second));
     const double size = std::sqrt(powers(0, 0).real() * powers(1, 1).real());
     EXPECT_TRUE(near(quick(0, 0).real(), powers(0, 0).real(), 1e-3));
     EXPECT_TRUE(near(quick(1, 1).real(), powers(1, 1).real(), 1e-3));
