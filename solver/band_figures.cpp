@@ -50,13 +50,19 @@ std::size_t best(const std::vector<double>& values, Better better) {
     return found;
 }
 
-/// The frequency of greatest input resistance; NaN when that lies at the band's edge.
+/// The frequency of greatest input resistance of the fundamental mode: the lowest maximum inside the band
+/// that reaches a tenth of the greatest resistance, so that higher modes further up do not count; NaN where
+/// there is none.
 double resonance(const PortResponse& port) {
     std::vector<double> resistance;
     for (const Complex& z : port.impedance) resistance.push_back(z.real());
-    const std::size_t peak = best(resistance, std::greater<>{});
-    if (peak == 0 || peak + 1 >= resistance.size()) return nan;
-    return vertex(around(port.frequency, peak), around(resistance, peak));
+    if (resistance.empty()) return nan;
+    const double greatest = resistance[best(resistance, std::greater<>{})];
+    for (std::size_t i = 1; i + 1 < resistance.size(); ++i)
+        if (resistance[i] > resistance[i - 1] && resistance[i] >= resistance[i + 1] &&
+            resistance[i] >= 0.1 * greatest)
+            return vertex(around(port.frequency, i), around(resistance, i));
+    return nan;
 }
 
 /// A frequency and |S11| there.

@@ -21,8 +21,8 @@ struct FarField {
     ComplexGrid e_phi;          ///< (T, Q) [V]
 };
 
-/// An empty far field over the whole sphere at about `step` between directions: theta 0..pi inclusive, phi 0..<2 pi.
-/// The true step divides pi/2. `step` in (0, pi/6] [rad].
+/// An empty far field over the whole sphere at about `step` between directions: theta 0..pi inclusive, phi
+/// 0..<2 pi. The true step divides pi/2. `step` in (0, pi/6] [rad].
 FarField whole_sphere(double frequency, double step);
 
 /// True when the directions of `field` are those of a `whole_sphere` grid (to 1e-9 rad).
@@ -31,9 +31,10 @@ bool covers_whole_sphere(const FarField& field);
 /// Radiation intensity [W/sr] per direction: (|E_theta|^2 + |E_phi|^2) / (2 eta). (T, Q)
 RealGrid intensity(const FarField& field);
 
-/// Power through the whole sphere [W]: the integral of `intensity` over all directions. The grid must be one made
-/// by `whole_sphere`; the phi sum is the trapezoidal rule (exact for the harmonics the grid resolves), the theta sum
-/// uses weights exact for trigonometric polynomials (Clenshaw-Curtis). Throws std::invalid_argument on another grid.
+/// Power through the whole sphere [W]: the integral of `intensity` over all directions. The grid must be one
+/// made by `whole_sphere`; the phi sum is the trapezoidal rule (exact for the harmonics the grid resolves),
+/// the theta sum uses weights exact for trigonometric polynomials (Clenshaw-Curtis). Throws
+/// std::invalid_argument on another grid.
 double radiated_power(const FarField& field);
 
 /// Gain in dBi of every direction for `accepted_power` [W] at the port. (T, Q); floor -200 dBi.

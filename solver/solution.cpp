@@ -6,9 +6,12 @@ namespace panelwright::solver {
 
 std::string_view name(Method method) {
     switch (method) {
-        case Method::aperture: return "aperture";
-        case Method::strip: return "strip";
-        case Method::surface: return "surface";
+        case Method::aperture:
+            return "aperture";
+        case Method::strip:
+            return "strip";
+        case Method::surface:
+            return "surface";
     }
     throw std::invalid_argument("no such method");
 }

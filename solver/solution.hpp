@@ -23,9 +23,9 @@ enum class Accuracy { quick, normal, fine };
 
 /// What to compute.
 struct Task {
-    std::vector<double> band;         ///< (F) ascending [Hz]
-    std::vector<double> pattern_at;   ///< (P) pattern frequencies, ascending [Hz]
-    double reference_impedance = 50.0;  ///< [ohm]
+    std::vector<double> band;                   ///< (F) ascending [Hz]
+    std::vector<double> pattern_at;             ///< (P) pattern frequencies, ascending [Hz]
+    double reference_impedance = 50.0;          ///< [ohm]
     double pattern_step = 0.03490658503988659;  ///< step of the pattern grid [rad]; 2 degrees
     Accuracy accuracy = Accuracy::normal;
 };
@@ -55,12 +55,12 @@ struct HealthEntry {
 struct Solution {
     Method method = Method::aperture;
     PortResponse port;
-    std::vector<FarField> patterns;        ///< (P)
-    std::vector<Powers> powers;            ///< (P)
+    std::vector<FarField> patterns;  ///< (P)
+    std::vector<Powers> powers;      ///< (P)
     mesh::SheetMesh mesh;
     std::vector<SurfaceCurrent> currents;  ///< (P)
     std::vector<HealthEntry> health;
-    std::vector<std::string> remarks;      ///< limits of validity that this case touches, one sentence each
+    std::vector<std::string> remarks;  ///< limits of validity that this case touches, one sentence each
 };
 
 }  // namespace panelwright::solver

@@ -14,6 +14,8 @@ bool near(const T& a, const T& b, double relative, double absolute = 0.0) {
 }
 
 /// Distance in dB between two positive powers.
-inline double decibels_apart(double a, double b) { return std::fabs(10.0 * std::log10(a / b)); }
+inline double decibels_apart(double a, double b) {
+    return std::fabs(10.0 * std::log10(a / b));
+}
 
 }  // namespace panelwright::test

@@ -3,6 +3,8 @@
 #include <algorithm>
 #include <chrono>
 #include <cmath>
+#include <limits>
+#include <optional>
 #include <stdexcept>
 
 #include "mesh/triangulate.hpp"
@@ -47,33 +49,24 @@ std::vector<double> loss_frequencies(const ApertureModel& model, const std::vect
     const double radius =
         std::hypot(std::max(-plate.x_from, plate.x_to), std::max(-plate.y_from, plate.y_to));
     const double phase = 2.0 * pi * (band.back() - band.front()) / speed_of_light * radius;
-    const int count = std::clamp(3 + static_cast<int>(std::ceil(2.0 * phase / pi)), 3, 12);
+    const double octaves = std::log2(band.back() / band.front());
+    const int count =
+        std::clamp(3 + static_cast<int>(std::ceil(2.0 * phase / pi) + std::floor(8.0 * octaves)), 3, 24);
     return chebyshev_points(band.front(), band.back(), count);
-}
-
-/// Rim voltages for the loss of two slots over an unbounded plane.
-RimVoltages starting_voltages(const mesh::Panel& panel, const ApertureModel& model, const Wave& wave) {
-    const DrivenCavity start = driven(panel, model, wave, starting_loss(model, wave));
-    return rim_voltages(model, wave, start);
 }
 
 PortResponse port_response(const mesh::Panel& panel, const ApertureModel& model,
                            const std::vector<double>& band) {
     const std::vector<double> at = loss_frequencies(model, band);
-    std::vector<double> losses;
-    double least = std::numeric_limits<double>::infinity();
+    std::vector<double> logarithms;  // the loss is positive and varies by powers of the frequency
     for (const double frequency : at) {
         const Wave wave(frequency);
-        const RimVoltages voltages = starting_voltages(panel, model, wave);
-        const Eigen::MatrixXcd powers =
-            panel_powers(wave, model.rim, model.plate, voltages.columns, DiffractionOrder::second);
-        losses.push_back(settle(panel, model, wave, powers).radiation_loss);
-        least = std::min(least, losses.back());
+        logarithms.push_back(std::log(settled_cavity(panel, model, wave, std::nullopt).state.radiation_loss));
     }
     PortResponse port{band, {}};
     for (const double frequency : band) {
         const Wave wave(frequency);
-        const double loss = std::max(interpolate(at, losses, frequency), 0.5 * least);
+        const double loss = std::exp(interpolate(at, logarithms, frequency));
         port.impedance.push_back(
             at_foot(model.line, wave, driven(panel, model, wave, loss).cavity_impedance));
     }
@@ -91,19 +84,21 @@ struct PatternSolution {
 PatternSolution pattern_solution(const mesh::Panel& panel, const ApertureModel& model, double frequency,
                                  double step, const mesh::SheetMesh& mesh) {
     const Wave wave(frequency);
-    const RimVoltages voltages = starting_voltages(panel, model, wave);
-    const std::vector<FarField> fields =
-        panel_far_fields(wave, model.rim, model.plate, voltages.columns, DiffractionOrder::second, step);
+    const auto [state, voltages, fields] = settled_cavity(panel, model, wave, step);
     PatternSolution out;
-    out.state = settle(panel, model, wave, mutual_powers(fields));
+    out.state = state;
     // 1 W accepted: half the resistance times the current squared. The feed line is lossless.
     const double feed_current = std::sqrt(2.0 / out.state.cavity_impedance.real());
-    const Complex fundamental = feed_current * out.state.amplitude;
+    const Eigen::VectorXcd factors = feed_current * column_factors(state, voltages);
     out.field = fields[0];
-    out.field.e_theta = fundamental * fields[0].e_theta + feed_current * fields[1].e_theta;
-    out.field.e_phi = fundamental * fields[0].e_phi + feed_current * fields[1].e_phi;
-    const Eigen::VectorXcd rim_voltage =
-        fundamental * voltages.columns.col(0) + feed_current * voltages.columns.col(1);
+    out.field.e_theta *= factors(0);
+    out.field.e_phi *= factors(0);
+    for (std::size_t column = 1; column < fields.size(); ++column) {
+        const Complex factor = factors(static_cast<Eigen::Index>(column));
+        out.field.e_theta += factor * fields[column].e_theta;
+        out.field.e_phi += factor * fields[column].e_phi;
+    }
+    const Eigen::VectorXcd rim_voltage = voltages.columns * factors;
     const double loss = out.state.loss;
     out.powers.accepted = 1.0;
     out.powers.radiated = radiated_power(out.field);
@@ -151,13 +146,11 @@ std::vector<std::string> aperture_remarks(const mesh::Panel& panel, const Task& 
     if (std::min(panel.reflector.length, panel.reflector.width) < 0.65 * wavelength)
         out.emplace_back(
             "A reflector side is shorter than 0.65 wavelength: edge diffraction of second order is not "
-            "enough there, "
-            "expect 1 dB in gain and 4 dB or more in front-to-back ratio.");
+            "enough there, expect 1 dB in gain and 4 dB or more in front-to-back ratio.");
     if (panel.spacer.permittivity > 1.0)
         out.emplace_back(
             "The dielectric is taken into account in the cavity and as a surface-wave loss; the far field is "
-            "that of the "
-            "rim over bare metal.");
+            "that of the rim over bare metal.");
     if (const auto* tab = std::get_if<mesh::Tab>(&panel.feed); tab != nullptr && tab->notch_depth > 0.0)
         out.emplace_back(
             "The tab between its slits is modelled as a line coupled to the patch: the match is "
@@ -191,12 +184,17 @@ Solution solve_aperture(const mesh::Panel& panel, const Task& task) {
         solution.currents.push_back(std::move(pattern.current));
     }
     solution.remarks = aperture_remarks(panel, task);
+    for (std::size_t p = 0; p < balance.values.size(); ++p)
+        if (const double off = std::fabs(balance.values[p] - 1.0); !(off < 0.01))
+            solution.remarks.push_back("The power balance is off by " +
+                                       std::to_string(std::lround(100.0 * off)) + " % at pattern frequency " +
+                                       std::to_string(p + 1) + ": do not trust gain and match there.");
     const double seconds = std::chrono::duration<double>(std::chrono::steady_clock::now() - begin).count();
     solution.health = {balance,
                        quality,
                        {"cavity_resonance_hz",
                         "Hz",
-                        "resonance of the patch alone over an unbounded reflector",
+                        "resonance of the patch alone, without posts, over an unbounded reflector",
                         {model.fringe.resonance},
                         false},
                        {"unknowns",

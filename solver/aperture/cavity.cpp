@@ -162,13 +162,19 @@ Eigen::VectorXcd pillar_currents(const Cavity& cavity, const Wave& wave, double 
 }
 
 Complex driving_impedance(const Cavity& cavity, const Wave& wave, double loss,
-                          std::span<const Pillar> pillars) {
-    const Eigen::VectorXcd currents = pillar_currents(cavity, wave, loss, pillars);
+                          std::span<const Pillar> pillars, const Eigen::VectorXcd& currents) {
+    if (static_cast<std::size_t>(currents.size()) != pillars.size())
+        throw std::invalid_argument("one current is needed for each pillar");
     Complex voltage = 0.0;
     for (std::size_t p = 0; p < pillars.size(); ++p)
         voltage += currents(static_cast<Eigen::Index>(p)) *
                    transfer_impedance(cavity, wave, loss, pillars[p], pillars[0]);
     return voltage;
+}
+
+Complex driving_impedance(const Cavity& cavity, const Wave& wave, double loss,
+                          std::span<const Pillar> pillars) {
+    return driving_impedance(cavity, wave, loss, pillars, pillar_currents(cavity, wave, loss, pillars));
 }
 
 }  // namespace panelwright::solver

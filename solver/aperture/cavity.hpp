@@ -59,6 +59,10 @@ std::vector<CavityField> cavity_field(const Cavity& cavity, const Wave& wave, do
 Eigen::VectorXcd pillar_currents(const Cavity& cavity, const Wave& wave, double loss,
                                  std::span<const Pillar> pillars);
 
+/// Impedance at the first pillar [ohm] when `currents`, those of `pillar_currents`, run through the pillars.
+Complex driving_impedance(const Cavity& cavity, const Wave& wave, double loss,
+                          std::span<const Pillar> pillars, const Eigen::VectorXcd& currents);
+
 /// Impedance at the first pillar [ohm], the others being joined to patch and reflector.
 Complex driving_impedance(const Cavity& cavity, const Wave& wave, double loss,
                           std::span<const Pillar> pillars);

@@ -1,6 +1,7 @@
 /// The cavity driven at one frequency, its radiation loss settled by its own far field.
 #pragma once
 
+#include <optional>
 #include <vector>
 
 #include "mesh/panel.hpp"
@@ -16,21 +17,38 @@ struct DrivenCavity {
     CavityLoss parts;
     Complex cavity_impedance;   ///< where the feed's current enters the cavity [ohm]
     Eigen::VectorXcd currents;  ///< through the pillars [A]
-    Complex amplitude;  ///< of the fundamental mode, its voltage at the cavity's end x = +length/2 [V]
+    Complex amplitude;          ///< of mode TM10: its voltage at the cavity's end x = +length/2 [V]
+    Complex cross_amplitude;  ///< of mode TM01: its voltage at the side y = +width/2 [V]; 0 when not excited
 };
 
-/// Rim voltages [V] for 1 A at the feed: column 0 the fundamental mode for unit amplitude,
-/// column 1 everything else.
+/// Rim voltages [V] for 1 A at the feed, split by what follows the loss: column 0 mode TM10 for unit
+/// amplitude, column 1 mode TM01 likewise where it is excited, the last column all other modes, which hardly
+/// depend on the loss.
 struct RimVoltages {
-    Eigen::MatrixXcd columns;  ///< (n, 2)
+    Eigen::MatrixXcd columns;  ///< (n, 2 or 3)
 };
 RimVoltages rim_voltages(const ApertureModel& model, const Wave& wave, const DrivenCavity& state);
 
+/// The factors of the columns of `rim_voltages` in the driven cavity: amplitudes, and 1 for the last.
+Eigen::VectorXcd column_factors(const DrivenCavity& state, const RimVoltages& voltages);
+
 /// Finds the radiation loss that makes the power lost in the cavity on behalf of radiation equal to the power
 /// that the rim radiates over the finite plate. `powers`: the (2, 2) matrix of radiated powers for the
-/// columns of `rim_voltages`, whose second column hardly depends on the loss it was made with.
+/// columns of `rim_voltages`; the second is kept as it was made, only the fundamental mode follows the loss.
 DrivenCavity settle(const mesh::Panel& panel, const ApertureModel& model, const Wave& wave,
                     const Eigen::MatrixXcd& powers);
+
+/// A settled cavity with the voltages and far fields it was settled by.
+struct SettledCavity {
+    DrivenCavity state;
+    RimVoltages voltages;
+    std::vector<FarField> fields;  ///< one a column of the voltages
+};
+
+/// Settles the cavity with far fields at steps of `step`, or as fine as their powers need where there is
+/// none.
+SettledCavity settled_cavity(const mesh::Panel& panel, const ApertureModel& model, const Wave& wave,
+                             std::optional<double> step);
 
 /// The driven cavity with a radiation loss that is already known.
 DrivenCavity driven(const mesh::Panel& panel, const ApertureModel& model, const Wave& wave,

@@ -303,11 +303,11 @@ Eigen::MatrixXcd mutual_powers(const std::vector<FarField>& fields) {
     return powers;
 }
 
-Eigen::MatrixXcd panel_powers(const Wave& wave, const Rim& rim, const Plate& plate,
-                              const Eigen::MatrixXcd& voltage, DiffractionOrder order) {
+std::vector<FarField> power_fields(const Wave& wave, const Rim& rim, const Plate& plate,
+                                   const Eigen::MatrixXcd& voltage, DiffractionOrder order) {
     // Products of two fields hold twice the harmonics of one.
     const double coarse = 0.5 * pi / quarter_intervals(wave, plate, power_margin);
-    return mutual_powers(interpolated_fields(wave, rim, plate, voltage, order, coarse, 0.5 * coarse));
+    return interpolated_fields(wave, rim, plate, voltage, order, coarse, 0.5 * coarse);
 }
 
 }  // namespace panelwright::solver

@@ -24,9 +24,9 @@ std::vector<FarField> panel_far_fields(const Wave& wave, const Rim& rim, const P
 /// each pair, an (s, s) Hermitian matrix [W].
 Eigen::MatrixXcd mutual_powers(const std::vector<FarField>& fields);
 
-/// `mutual_powers` of the far fields of the columns of `voltage`, on a sphere just fine enough for them.
-Eigen::MatrixXcd panel_powers(const Wave& wave, const Rim& rim, const Plate& plate,
-                              const Eigen::MatrixXcd& voltage, DiffractionOrder order);
+/// Far fields like `panel_far_fields`, on a sphere just fine enough for `mutual_powers`.
+std::vector<FarField> power_fields(const Wave& wave, const Rim& rim, const Plate& plate,
+                                   const Eigen::MatrixXcd& voltage, DiffractionOrder order);
 
 /// Trigonometric interpolation of a whole-sphere far field to another step. Exact for fields whose harmonics
 /// the given grid resolves. Throws std::invalid_argument on a grid not made by `whole_sphere`.

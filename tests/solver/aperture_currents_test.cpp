@@ -28,7 +28,7 @@ SurfaceCurrent currents_at(const mesh::Panel& panel, const Wave& wave, const std
     const ApertureModel model = aperture_model(panel);
     const DrivenCavity state = driven(panel, model, wave, 0.07);
     const RimVoltages voltages = rim_voltages(model, wave, state);
-    const Eigen::VectorXcd rim = state.amplitude * voltages.columns.col(0) + voltages.columns.col(1);
+    const Eigen::VectorXcd rim = voltages.columns * column_factors(state, voltages);
     mesh::SheetMesh mesh;
     for (const Place& place : places) {
         const int first = static_cast<int>(mesh.points.size());
