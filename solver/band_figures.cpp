@@ -51,8 +51,8 @@ std::size_t best(const std::vector<double>& values, Better better) {
 }
 
 /// The frequency of greatest input resistance of the fundamental mode: the lowest maximum inside the band
-/// that reaches a tenth of the greatest resistance, so that higher modes further up do not count; NaN where
-/// there is none.
+/// that reaches a fiftieth of the greatest resistance, so that higher modes further up do not count; NaN
+/// where there is none.
 double resonance(const PortResponse& port) {
     std::vector<double> resistance;
     for (const Complex& z : port.impedance) resistance.push_back(z.real());
@@ -60,7 +60,7 @@ double resonance(const PortResponse& port) {
     const double greatest = resistance[best(resistance, std::greater<>{})];
     for (std::size_t i = 1; i + 1 < resistance.size(); ++i)
         if (resistance[i] > resistance[i - 1] && resistance[i] >= resistance[i + 1] &&
-            resistance[i] >= 0.1 * greatest)
+            resistance[i] >= 0.02 * greatest)
             return vertex(around(port.frequency, i), around(resistance, i));
     return nan;
 }
