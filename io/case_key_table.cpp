@@ -262,7 +262,8 @@ constexpr auto keys = std::to_array<Key>({
      .name = "accuracy",
      .type = KeyType::accuracy,
      .fallback = "normal",
-     .description = "How much work to spend."},
+     .description = "How much work to spend; with aperture, how finely the currents are drawn: its figures "
+                    "do not depend on it."},
 
     {.table = "vary",
      .name = "keys",
