@@ -69,8 +69,14 @@ class Reader {
         }
         if (!homes.empty())
             return fmt::format("unknown key {} {}; it belongs in {}", shown(key), where, one_of(homes));
-        return fmt::format("unknown key {} {}; the nearest known key is \"{}\"", shown(key), where,
-                           nearest(key, known));
+        if (const TableEntry* const block = find_table(key); block != nullptr && !table.empty()) {
+            return fmt::format("unknown key {} {}; it is a table of its own, written as {}", shown(key),
+                               where, block->header);
+        }
+        const std::string_view near = nearest(key, known);
+        return near.empty() ? fmt::format("unknown key {} {}; known: {}", shown(key), where, one_of(known))
+                            : fmt::format("unknown key {} {}; the nearest known key is \"{}\"", shown(key),
+                                          where, near);
     }
 
     void read_missing(const TableEntry& table) {

@@ -77,6 +77,11 @@ Outcome check_bare(const Key& key, std::string_view path, const Value& value) {
         if (key.type == KeyType::number)
             return Checked{value.at, true, *real, with_point(shortest(*real)), {}};
     }
+    if (const auto* real = std::get_if<double>(&value.data); real != nullptr && std::rint(*real) == *real) {
+        return problem(value.at, path,
+                       fmt::format("found the number {}; wanted: a whole number without a decimal point, {}",
+                                   with_point(shortest(*real)), allowed(key)));
+    }
     const bool is_text = std::holds_alternative<std::string>(value.data);
     return problem(value.at, path,
                    fmt::format("found {}; allowed: {}{}", found(value), wanted,
@@ -114,8 +119,8 @@ Outcome check_word(const Key& key, std::string_view path, const Value& value) {
     }
     if (std::ranges::find(known, *word) == known.end()) {
         return problem(value.at, path,
-                       fmt::format("{} is not known; the nearest is \"{}\" (allowed: {})", shown(*word),
-                                   nearest(*word, known), one_of(known)));
+                       fmt::format("{} is not known; {}allowed: {}", shown(*word), nearest_is(*word, known),
+                                   one_of(known)));
     }
     Checked checked{value.at, true, 0.0, *word, {}};
     if (key.type == KeyType::metal) checked.number = solver::find_metal(*word)->conductivity;

@@ -113,8 +113,11 @@ class VaryReader {
         const auto parts = parse_path(text);
         const Key* key = parts ? find_key(parts->table, parts->name) : nullptr;
         if (key == nullptr) {
-            return fail(at, fmt::format("{}: {} is no key; the nearest that can be varied is \"{}\"", where,
-                                        shown(text), nearest_key(text)));
+            const std::string near = nearest_key(text);
+            return fail(at, fmt::format("{}: {} is no key; {}", where, shown(text),
+                                        near.empty()
+                                            ? "`panelwright keys` lists those that there are"
+                                            : fmt::format("the nearest that can be varied is \"{}\"", near)));
         }
         if (!is_numeric(key->type)) {
             return fail(at, fmt::format("{}: \"{}\" holds no number; allowed: numeric keys", where, text));

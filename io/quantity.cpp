@@ -57,8 +57,8 @@ std::string unit_problem(std::string_view found, std::string_view number, Dimens
     }
     std::vector<std::string_view> known;
     for (const Unit& unit : units(dimension)) known.push_back(unit.name);
-    return fmt::format("{} is no unit of {}; the nearest is \"{}\" (allowed units: {})", shown(found),
-                       name(dimension), nearest(found, known), unit_list(dimension));
+    return fmt::format("{} is no unit of {}; {}allowed units: {}", shown(found), name(dimension),
+                       nearest_is(found, known), unit_list(dimension));
 }
 
 }  // namespace

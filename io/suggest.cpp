@@ -72,7 +72,14 @@ std::string_view nearest(std::string_view word, std::span<const std::string_view
             best = candidate;
         }
     }
-    return best;
+    // One letter in three; a word of two letters may differ in one.
+    const bool near = !best.empty() && 3 * smallest <= std::max(word.size(), best.size()) + 1;
+    return near ? best : std::string_view();
+}
+
+std::string nearest_is(std::string_view word, std::span<const std::string_view> candidates) {
+    const std::string_view near = nearest(word, candidates);
+    return near.empty() ? std::string() : fmt::format("the nearest is \"{}\"; ", near);
 }
 
 std::string shortened(std::string_view text, std::size_t longest) {

@@ -14,9 +14,12 @@ namespace panelwright::io {
 /// for texts.
 std::size_t edit_distance(std::string_view a, std::string_view b);
 
-/// The one of `candidates` with the smallest edit distance to `word`, the first of equals; empty when there
-/// are none.
+/// The one of `candidates` with the smallest edit distance to `word`, the first of equals; empty when none is
+/// near: a distance of about a third of the longer word is the most.
 std::string_view nearest(std::string_view word, std::span<const std::string_view> candidates);
+
+/// "the nearest is "width"; ", or nothing when none of `candidates` is near.
+std::string nearest_is(std::string_view word, std::span<const std::string_view> candidates);
 
 /// `text` on one line: control characters as \n, \t or \u001B, backslashes and quotation marks as they are,
 /// at most `longest` characters with "…" for the rest. `text` is UTF-8; bytes that are not are written as

@@ -63,10 +63,13 @@ TEST(EditDistance, CountsInsertionsDeletionsReplacementsAndSwaps) {
     EXPECT_EQ(edit_distance(std::string(1000, 'a'), "a"), 63U);  // names are cut at 64 bytes
 }
 
-TEST(Nearest, TakesTheFirstOfEquals) {
+TEST(Nearest, TakesTheFirstOfEqualsThatAreNear) {
     const std::vector<std::string_view> names = {"height", "length", "width"};
     EXPECT_EQ(nearest("lenght", names), "length");
-    EXPECT_EQ(nearest("", std::vector<std::string_view>{"ab", "cd"}), "ab");
+    EXPECT_EQ(nearest("ax", std::vector<std::string_view>{"ab", "ac"}), "ab");
+    EXPECT_EQ(nearest("", std::vector<std::string_view>{"ab", "cd"}), "");
+    EXPECT_EQ(nearest("bogus", std::vector<std::string_view>{"from", "to"}), "");
+    EXPECT_EQ(nearest("a", std::vector<std::string_view>{"title", "band"}), "");
     EXPECT_EQ(nearest("x", std::vector<std::string_view>{}), "");
 }
 
