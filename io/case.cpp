@@ -38,6 +38,12 @@ std::string file_text(const std::filesystem::path& path, const std::string& file
     if (std::filesystem::is_directory(path, status)) {
         refuse(file, "this is a directory; allowed: a case file, a text in TOML");
     }
+    // Reading a pipe or a device would wait for whoever writes to it, perhaps for ever.
+    if (std::filesystem::exists(path, status) && !std::filesystem::is_regular_file(path, status)) {
+        refuse(
+            file,
+            "this is no regular file but a pipe, a socket or a device; allowed: a case file, a text in TOML");
+    }
     std::ifstream stream(path, std::ios::binary);
     if (!stream) refuse(file, "the file cannot be opened for reading; does it exist, and may it be read?");
     // One byte more than is allowed tells a file that is too large without reading all of it.
