@@ -45,6 +45,10 @@ std::vector<std::pair<const char*, mesh::Panel>> assorted_panels() {
     lossy.spacer.permittivity = 1.07;
     lossy.spacer.loss_tangent = 0.01;
     panels.emplace_back("lossy", lossy);
+    mesh::Panel square = probe_panel(0.12);  // two modes at once
+    square.patch.width = square.patch.length;
+    square.feed = mesh::Probe{-0.013, 0.009, 0.0008};
+    panels.emplace_back("square", square);
     return panels;
 }
 
