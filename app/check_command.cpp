@@ -28,6 +28,8 @@ struct MethodPlan {
     solver::Method method;
     std::size_t least_triangles = 0;
     std::size_t most_triangles = 0;
+    std::size_t least_unknowns = 0;
+    std::size_t most_unknowns = 0;
     double memory = 0.0;   ///< of the costliest design [bytes]
     double seconds = 0.0;  ///< of all designs, one after the other [s]
 };
@@ -48,9 +50,11 @@ struct Plan {
 };
 
 void add(MethodPlan& plan, const Estimate& cost) {
-    plan.least_triangles =
-        plan.seconds == 0.0 ? cost.triangles : std::min(plan.least_triangles, cost.triangles);
+    const bool first = plan.seconds == 0.0;
+    plan.least_triangles = first ? cost.triangles : std::min(plan.least_triangles, cost.triangles);
     plan.most_triangles = std::max(plan.most_triangles, cost.triangles);
+    plan.least_unknowns = first ? cost.unknowns : std::min(plan.least_unknowns, cost.unknowns);
+    plan.most_unknowns = std::max(plan.most_unknowns, cost.unknowns);
     plan.memory = std::max(plan.memory, cost.memory);
     plan.seconds += cost.seconds;
 }
@@ -104,6 +108,12 @@ ElectricalSize electrical_size(const io::Case& problem) {
             panel.reflector.width / wave.wavelength};
 }
 
+/// "1 unknown", "40 to 60 triangles"
+std::string counted(std::size_t least, std::size_t most, std::string_view thing) {
+    const std::string range = least == most ? fmt::format("{}", most) : fmt::format("{} to {}", least, most);
+    return fmt::format("{} {}{}", range, thing, most == 1 ? "" : "s");
+}
+
 std::string plan_table(const io::Case& problem, const Plan& plan) {
     const ElectricalSize size = electrical_size(problem);
     std::string text = problem.title.empty() ? std::string() : problem.title + "\n\n";
@@ -119,10 +129,9 @@ std::string plan_table(const io::Case& problem, const Plan& plan) {
     for (const std::string& remark : plan.remarks) text += fmt::format("  note: {}\n", remark);
     text += fmt::format("\nWould run: {} design{}\n", plan.designs, plan.designs == 1 ? "" : "s");
     for (const MethodPlan& method : plan.methods) {
-        text += fmt::format("  {:<12}{} triangles", solver::name(method.method), method.least_triangles);
-        if (method.most_triangles != method.least_triangles)
-            text += fmt::format(" to {}", method.most_triangles);
-        text += '\n';
+        text += fmt::format("  {:<12}{}, {}\n", solver::name(method.method),
+                            counted(method.least_triangles, method.most_triangles, "triangle"),
+                            counted(method.least_unknowns, method.most_unknowns, "unknown"));
     }
     text += fmt::format("  about {:.0f} MB of memory, {}\n", plan.memory / 1e6, shown_duration(plan.seconds));
     for (std::size_t n = 0; n < std::min(plan.bad.size(), most_bad_designs_shown); ++n) {
@@ -141,7 +150,9 @@ nlohmann::ordered_json plan_json(const io::Case& problem, const Plan& plan) {
     for (const MethodPlan& method : plan.methods) {
         methods.push_back({{"name", solver::name(method.method)},
                            {"triangles", method.most_triangles},
-                           {"least_triangles", method.least_triangles}});
+                           {"least_triangles", method.least_triangles},
+                           {"unknowns", method.most_unknowns},
+                           {"least_unknowns", method.least_unknowns}});
     }
     Json bad = Json::array();
     for (const BadDesign& design : plan.bad)
@@ -186,7 +197,8 @@ Command check_command(CLI::App& program) {
     parser->footer(
         "Shows the panel with all defaults filled in, its size in wavelengths, the number of designs, the "
         "size\n"
-        "of the meshes, and about how much memory and time a run takes. Designs of a study that break a "
+        "of the meshes, the number of unknowns, and about how much memory and time a run takes. Designs of a "
+        "study that break a "
         "rule\n"
         "are named. All problems of a case file are reported together, as FILE:LINE:COLUMN: message, with\n"
         "exit status 2.\n\n"

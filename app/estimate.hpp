@@ -10,6 +10,7 @@ namespace panelwright::app {
 /// Cost of one design with one method.
 struct Estimate {
     std::size_t triangles = 0;  ///< of the mesh that carries the currents
+    std::size_t unknowns = 0;   ///< numbers that a system of equations is solved for
     double memory = 0.0;        ///< held at once while the design is solved and written [bytes]
     double seconds = 0.0;       ///< with one thread, writing included [s]
 };
