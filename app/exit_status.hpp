@@ -11,7 +11,7 @@ enum class ExitStatus {
     other = 1,           ///< anything that is none of the others: disk full, folder not writable, no memory
     bad_input = 2,       ///< case file or command line; nothing has been written
     failed_designs = 3,  ///< a study came to its end and some designs failed
-    stopped = 4,         ///< stopped early; the same command goes on from there
+    stopped = 4,         ///< stopped early; of a study, the same command goes on from there
 };
 
 /// The command was asked for something that it refuses, such as a folder with another case's results.

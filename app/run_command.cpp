@@ -44,8 +44,18 @@ void print(const RunOptions& options, const ResultsFolder& folder, const std::ve
     show(text);
 }
 
-ExitStatus stopped(const RunOptions& options) {
-    tell(fmt::format("{}: stopped early; the same command goes on from here\n", options.case_file));
+/// The whole message of a run that ends early.
+std::string message(const RunOptions& options, std::string_view what) {
+    return fmt::format("{}: {}\n", options.case_file, what);
+}
+
+constexpr std::string_view nothing_written = "stopped; nothing was written";
+constexpr std::string_view some_written =
+    "stopped before all files were written; the same command starts over";
+constexpr std::string_view designs_kept = "stopped early; the same command goes on from here";
+
+ExitStatus stopped(const RunOptions& options, std::string_view what) {
+    tell(message(options, what));
     return ExitStatus::stopped;
 }
 
@@ -56,10 +66,14 @@ ExitStatus run_single(const RunOptions& options, const io::Case& problem, const 
         tell(fmt::format("{}: solving with {}\n", options.case_file, solver::name(method)));
     }
     const std::optional<solver::Result> result = solve_all(problem, signals);
-    if (!result) return stopped(options);
-    claim_folder(folder, problem.resolved, options.existing);
+    if (!result) return stopped(options, nothing_written);
+    signals.end_at(2, message(options, some_written));
+    {
+        const auto whole = signals.hold_off();
+        claim_folder(folder, problem.resolved, options.existing);
+    }
     const auto written = write_files(folder, *result, provenance(options.threads), signals);
-    if (written.empty() || written.back() != folder.result()) return stopped(options);
+    if (written.empty() || written.back() != folder.result()) return stopped(options, some_written);
     if (!viz::vtk_available()) tell("no .vtp files: this program was built without VTK\n");
     std::vector<std::string> files;
     for (const auto& path : written) files.push_back(path.filename().string());
@@ -69,14 +83,18 @@ ExitStatus run_single(const RunOptions& options, const io::Case& problem, const 
 
 ExitStatus run_designs(const RunOptions& options, const io::Case& study, const ResultsFolder& folder,
                        StopSignals& signals) {
-    claim_folder(folder, study.resolved, options.existing);
+    signals.end_at(2, message(options, designs_kept));
+    {
+        const auto whole = signals.hold_off();
+        claim_folder(folder, study.resolved, options.existing);
+    }
     const std::size_t designs = io::design_count(study);
     tell(fmt::format("{}: {} designs, {} at a time\n", options.case_file, designs,
                      std::min(designs, static_cast<std::size_t>(options.threads))));
     const StudyOutcome outcome = run_study(study, folder, options.threads, signals);
     print(options, folder, {"designs.csv", "designs"}, study_table(study, outcome),
           study_json(study, outcome));
-    if (outcome.stopped) return stopped(options);
+    if (outcome.stopped) return stopped(options, designs_kept);
     for (const DesignRow& row : outcome.rows) {
         if (row.status == DesignStatus::failed) return ExitStatus::failed_designs;
     }
@@ -85,10 +103,14 @@ ExitStatus run_designs(const RunOptions& options, const io::Case& study, const R
 
 ExitStatus run(const RunOptions& options) {
     StopSignals signals;
+    signals.end_at(1, message(options, nothing_written));
     const io::Case problem = io::read_case(options.case_file);
     const ResultsFolder folder{options.folder.empty() ? default_folder(options.case_file)
                                                       : std::filesystem::path(options.folder)};
-    check_folder(folder, problem.resolved, options.existing);
+    {
+        const auto whole = signals.hold_off();
+        check_folder(folder, problem.resolved, options.existing);
+    }
     return problem.variations.empty() ? run_single(options, problem, folder, signals)
                                       : run_designs(options, problem, folder, signals);
 }
@@ -123,7 +145,10 @@ Command run_command(CLI::App& program) {
         "that holds another case's results is left alone unless --fresh is given.\n\n"
         "Figures go to standard output, progress and messages to standard error.\n"
         "Exit status: 0 done; 2 bad case file or command line; 3 some designs of a study failed;\n"
-        "4 stopped by Ctrl-C, the same command goes on; 1 anything else.\n\n"
+        "4 stopped by Ctrl-C; 1 anything else.\n\n"
+        "Ctrl-C ends a single design at once. A study first ends the designs under way and goes on from "
+        "there\n"
+        "when the command is given again; a second Ctrl-C drops them.\n\n"
         "Examples:\n"
         "  panelwright run cases/gauge-869.toml\n"
         "  panelwright run cases/gauge-869.toml --out /tmp/gauge --fresh\n"

@@ -93,6 +93,7 @@ std::vector<fs::path> write_files(const ResultsFolder& folder, const solver::Res
     std::vector<fs::path> written;
     for (const FileJob& job : jobs) {
         if (signals.requested()) break;
+        const auto whole = signals.hold_off();
         commit_file(job.path, job.write);
         written.push_back(job.path);
     }

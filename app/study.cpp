@@ -158,6 +158,7 @@ class StudyRun {
     solver::Result solve_and_save(std::size_t number, const io::Case& design) {
         solver::Result result = empty_result(design);
         for (const solver::Method method : design.methods) result.methods.push_back(solve(design, method));
+        const auto whole = signals_.hold_off();
         commit_file(folder_.design(number), [&](const std::filesystem::path& path) {
             const std::lock_guard lock(hdf5_);
             io::write_result(path, result, provenance(1));
@@ -176,6 +177,7 @@ class StudyRun {
     void save_table() { write_table(designs_csv(study_, rows_)); }
 
     void write_table(const std::string& table) {
+        const auto whole = signals_.hold_off();
         commit_file(folder_.designs_table(),
                     [&](const std::filesystem::path& path) { io::write_file(path, table); });
     }

@@ -50,6 +50,16 @@ inline std::string study_with_a_bad_design() {
            "\n[[vary]]\nkeys = [\"feed.x\"]\nvalues = [\"-40 mm\", \"-36 mm\", \"-120 mm\", \"-3.2 cm\"]\n";
 }
 
+/// Blocks of `count` thin posts in rows of ten under the patch of `small_case`, off its feed.
+inline std::string many_posts(int count) {
+    std::string text;
+    for (int n = 0; n < count; ++n) {
+        text += "\n[[post]]\nx = \"" + std::to_string(-60 + 12 * (n % 10)) + " mm\"\ny = \"" +
+                std::to_string(20 + 10 * (n / 10)) + " mm\"\ndiameter = \"1 mm\"\n";
+    }
+    return text;
+}
+
 /// `text` with the first `before` replaced by `after`.
 inline std::string with(std::string text, const std::string& before, const std::string& after) {
     const std::size_t place = text.find(before);

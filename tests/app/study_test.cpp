@@ -152,6 +152,26 @@ TEST(Study, StopsBetweenDesignsAndGoesOnLater) {
     EXPECT_EQ(content(folder / "r/designs.csv"), content(folder / "whole/designs.csv"));
 }
 
+TEST(Study, EndsAtOnceAtASecondSignal) {
+    using namespace std::chrono_literals;
+    const TemporaryFolder folder;
+    // Every design takes many seconds: 40 thin posts, and a fine band.
+    folder.write("study.toml", with(small_study(4), "points = 7", "points = 2001") + many_posts(40));
+    Process process({program(), "run", "study.toml", "--out", "r", "--threads", "1"}, folder.path());
+    for (int look = 0; look < 5000 && !std::filesystem::exists(folder / "r/designs.csv"); ++look)
+        std::this_thread::sleep_for(1ms);
+    const auto start = std::chrono::steady_clock::now();
+    process.signal(SIGINT);
+    std::this_thread::sleep_for(200ms);  // two signals in one moment count as one
+    process.signal(SIGINT);
+    const Ended stopped = process.wait();
+    EXPECT_EQ(stopped.status, 4) << stopped.err;
+    EXPECT_NE(stopped.err.find("goes on from here"), std::string::npos) << stopped.err;
+    // A design takes at least ten times as long.
+    EXPECT_LT(std::chrono::steady_clock::now() - start, 4s);
+    EXPECT_FALSE(has_temporaries(folder / "r"));
+}
+
 TEST(Study, StopsAtAFaultOfTheWholeRun) {
     const TemporaryFolder folder;
     folder.write("study.toml", small_study(40));
