@@ -5,11 +5,14 @@
 #include <array>
 #include <exception>
 #include <new>
+#include <string>
+#include <vector>
 
 #include "app/commands.hpp"
 #include "app/console.hpp"
 #include "app/provenance.hpp"
 #include "io/case.hpp"
+#include "io/suggest.hpp"
 
 namespace panelwright::app {
 namespace {
@@ -35,6 +38,20 @@ ExitStatus outcome(const Command& command) {
     }
 }
 
+/// What the parser says of a wrong command line. A word in the place of a command is named: the parser only
+/// says that a command is missing.
+int refuse(const CLI::App& program, const CLI::ParseError& error) {
+    const std::vector<std::string> unknown = program.remaining();
+    if (error.get_exit_code() != 0 && program.get_subcommands().empty() && !unknown.empty()) {
+        tell(
+            fmt::format("panelwright: unknown command {}; commands: run, check, keys\n"
+                        "`panelwright --help` explains them.\n",
+                        io::shown(unknown.front())));
+        return static_cast<int>(ExitStatus::bad_input);
+    }
+    return program.exit(error) == 0 ? 0 : static_cast<int>(ExitStatus::bad_input);
+}
+
 int run_program(int argc, char** argv) {
     reserve_standard_streams();
     CLI::App program{
@@ -51,7 +68,7 @@ int run_program(int argc, char** argv) {
     try {
         program.parse(argc, argv);
     } catch (const CLI::ParseError& error) {
-        return program.exit(error) == 0 ? 0 : static_cast<int>(ExitStatus::bad_input);
+        return refuse(program, error);
     }
     for (const Command& command : commands) {
         if (command.parser->parsed()) return static_cast<int>(outcome(command));

@@ -24,7 +24,8 @@ std::string state(const Count& count, double seconds) {
     if (count.failed > 0) text += fmt::format(", {} failed", count.failed);
     if (finished(count) == count.total) return text + fmt::format(", {}", shown_duration(seconds));
     const std::optional<double> left = time_left(count, seconds);
-    return left ? text + fmt::format(", about {} left", shown_duration(*left)) : text;
+    if (!left) return text;
+    return text + fmt::format(", {}{} left", *left < 1.0 ? "" : "about ", shown_duration(*left));
 }
 
 }  // namespace

@@ -1,8 +1,10 @@
 #include "app/results_folder.hpp"
 
 #include <fmt/format.h>
+#include <unistd.h>
 
 #include <algorithm>
+#include <cerrno>
 #include <system_error>
 
 #include "app/atomic_file.hpp"
@@ -103,6 +105,20 @@ void refuse_other_case(const ResultsFolder& folder, const std::string& resolved)
     throw io::FileError(fmt::format("{}: {}", at.string(), error.code().message()));
 }
 
+/// Finds out whether `folder` could be created, by creating the first of its missing parts and removing it.
+void try_to_create(const fs::path& folder) {
+    fs::path missing = fs::absolute(folder).lexically_normal();
+    if (!missing.has_filename()) missing = missing.parent_path();  // "results/"
+    while (missing.has_relative_path() && !fs::exists(missing.parent_path())) missing = missing.parent_path();
+    std::error_code error;
+    fs::create_directory(missing, error);
+    if (error) {
+        throw io::FileError(
+            fmt::format("{}: the folder cannot be created: {}", folder.string(), error.message()));
+    }
+    fs::remove(missing, error);
+}
+
 }  // namespace
 
 fs::path ResultsFolder::design(std::size_t number) const {
@@ -127,10 +143,14 @@ fs::path default_folder(const fs::path& case_file) {
 
 void check_folder(const ResultsFolder& folder, const std::string& resolved, Existing existing) {
     try {
-        if (!fs::exists(folder.folder)) return;
+        if (!fs::exists(folder.folder)) return try_to_create(folder.folder);
         if (!fs::is_directory(folder.folder)) {
             throw io::FileError(fmt::format("{}: is not a folder; choose another one with --out DIR",
                                             folder.folder.string()));
+        }
+        if (access(folder.folder.c_str(), W_OK | X_OK) != 0) {
+            throw io::FileError(fmt::format("{}: cannot be written to: {}", folder.folder.string(),
+                                            std::generic_category().message(errno)));
         }
         if (existing == Existing::keep) refuse_other_case(folder, resolved);
     } catch (const fs::filesystem_error& error) {

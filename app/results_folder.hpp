@@ -34,9 +34,9 @@ struct ResultsFolder {
 /// "gauge-869-results" in the working directory, for "anywhere/gauge-869.toml".
 std::filesystem::path default_folder(const std::filesystem::path& case_file);
 
-/// Refuses a folder that must not be written to; writes nothing itself. `resolved` is the case about to be
-/// run. Throws UsageError when the folder holds another case (naming the keys that differ) or results whose
-/// case is not known, and io::FileError when `folder` is not a folder or cannot be read.
+/// Refuses a folder that must not or cannot be written to; leaves nothing behind itself. `resolved` is the
+/// case about to be run. Throws UsageError when the folder holds another case (naming the keys that differ)
+/// or results whose case is not known, and io::FileError when `folder` is not a folder or cannot be read.
 void check_folder(const ResultsFolder& folder, const std::string& resolved, Existing existing);
 
 /// Makes the folder ready: creates it, removes earlier results (only files that this program writes) when

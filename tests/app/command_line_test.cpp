@@ -1,5 +1,6 @@
 /// The command line as a whole: the program is run as a person would run it.
 #include <gtest/gtest.h>
+#include <sys/stat.h>
 
 #include <nlohmann/json.hpp>
 
@@ -54,6 +55,22 @@ TEST(CommandLine, RefusesWrongUseWithStatusTwoAndWritesNothing) {
         EXPECT_EQ(ended.out, "") << Json(arguments).dump();
     }
     EXPECT_EQ(listing(folder.path()), std::vector<std::string>{"gauge.toml"});
+}
+
+TEST(CommandLine, NamesAWordThatIsNoCommand) {
+    const TemporaryFolder folder;
+    const Ended ended = panelwright({"foo"}, folder.path());
+    EXPECT_EQ(ended.status, 2);
+    EXPECT_NE(ended.err.find("unknown command \"foo\"; commands: run, check, keys"), std::string::npos)
+        << ended.err;
+}
+
+TEST(CommandLine, RefusesAPipeInsteadOfWaitingForIt) {
+    const TemporaryFolder folder;
+    ASSERT_EQ(mkfifo((folder / "pipe.toml").c_str(), 0600), 0);
+    const Ended ended = panelwright({"check", "pipe.toml"}, folder.path());
+    EXPECT_EQ(ended.status, 2);
+    EXPECT_NE(ended.err.find("pipe.toml:1:1: this is no regular file"), std::string::npos) << ended.err;
 }
 
 TEST(CommandLine, ListsAllProblemsOfACaseAndWritesNothing) {
@@ -123,6 +140,23 @@ TEST(Check, SaysWhatWouldRunAndSolvesNothing) {
     EXPECT_NE(table.out.find("Gauge under test"), std::string::npos);
     EXPECT_NE(table.out.find("147 mm x 165 mm"), std::string::npos) << table.out;
     EXPECT_EQ(listing(folder.path()), std::vector<std::string>{"gauge.toml"});
+}
+
+TEST(Check, CountsThePostsAmongTheUnknownsAndInTheTime) {
+    const TemporaryFolder folder;
+    folder.write("gauge.toml", small_case());
+    folder.write("posts.toml", small_case() + many_posts(20));
+    const Ended bare = panelwright({"check", "gauge.toml", "--json"}, folder.path());
+    const Ended full = panelwright({"check", "posts.toml", "--json"}, folder.path());
+    const Ended table = panelwright({"check", "posts.toml"}, folder.path());
+    ASSERT_EQ(bare.status, 0) << bare.err;
+    ASSERT_EQ(full.status, 0) << full.err;
+    EXPECT_EQ(Json::parse(bare.out)["methods"][0]["unknowns"], 1);
+    EXPECT_EQ(Json::parse(full.out)["methods"][0]["unknowns"], 21);
+    EXPECT_NE(table.out.find(", 21 unknowns\n"), std::string::npos) << table.out;
+    // 441 pairs of some 590 terms at 67 frequencies take seconds, the rest a tenth of one.
+    EXPECT_GT(Json::parse(full.out)["seconds"].get<double>(),
+              Json::parse(bare.out)["seconds"].get<double>() + 1.0);
 }
 
 TEST(Check, CountsTheDesignsAndNamesThoseThatBreakARule) {

@@ -2,7 +2,9 @@
 #include <gtest/gtest.h>
 
 #include <algorithm>
+#include <chrono>
 #include <nlohmann/json.hpp>
+#include <thread>
 
 #include "io/case.hpp"
 #include "io/pattern_csv.hpp"
@@ -145,6 +147,23 @@ TEST(Run, RefusesResultsOfAnUnknownCase) {
     EXPECT_NE(ended.err.find("case.toml"), std::string::npos) << ended.err;
 }
 
+TEST(Run, EndsAtOnceWhenStoppedWhileSolving) {
+    using namespace std::chrono_literals;
+    const TemporaryFolder folder;
+    // Takes many seconds: 40 thin posts, and a fine band.
+    folder.write("gauge.toml", with(small_case(), "points = 7", "points = 2001") + many_posts(40));
+    Process process({program(), "run", "gauge.toml", "--out", "r"}, folder.path());
+    std::this_thread::sleep_for(500ms);
+    const auto start = std::chrono::steady_clock::now();
+    process.signal(SIGTERM);
+    const Ended stopped = process.wait();
+    EXPECT_EQ(stopped.status, 4) << stopped.err;
+    EXPECT_NE(stopped.err.find("gauge.toml: stopped; nothing was written\n"), std::string::npos)
+        << stopped.err;
+    EXPECT_LT(std::chrono::steady_clock::now() - start, 4s);  // solving takes at least ten times as long
+    EXPECT_EQ(listing(folder.path()), std::vector<std::string>{"gauge.toml"});
+}
+
 TEST(Run, SaysWhyAFolderCannotBeWritten) {
     const TemporaryFolder folder;
     folder.write("gauge.toml", small_case());
@@ -153,6 +172,7 @@ TEST(Run, SaysWhyAFolderCannotBeWritten) {
         const Ended ended = panelwright({"run", "gauge.toml", "--out", out}, folder.path());
         EXPECT_EQ(ended.status, 1) << out;
         EXPECT_NE(ended.err.find(out), std::string::npos) << ended.err;
+        EXPECT_EQ(ended.err.find("solving"), std::string::npos) << "noticed too late: " << ended.err;
     }
 }
 
