@@ -44,9 +44,9 @@ int refuse(const CLI::App& program, const CLI::ParseError& error) {
     const std::vector<std::string> unknown = program.remaining();
     if (error.get_exit_code() != 0 && program.get_subcommands().empty() && !unknown.empty()) {
         tell(
-            fmt::format("panelwright: unknown command {}; commands: run, check, keys\n"
+            fmt::format("panelwright: unknown {} {}; commands: run, check, keys\n"
                         "`panelwright --help` explains them.\n",
-                        io::shown(unknown.front())));
+                        unknown.front().starts_with('-') ? "option" : "command", io::shown(unknown.front())));
         return static_cast<int>(ExitStatus::bad_input);
     }
     return program.exit(error) == 0 ? 0 : static_cast<int>(ExitStatus::bad_input);
